@@ -1,0 +1,271 @@
+"""Everything that can go wrong, as values with a sentence.
+
+    CalcsheetsError
+    ├── DefinitionError          a relation, quantity, gas or process of the library is wrong
+    ├── UnitError                text with a unit that cannot be read as an engineer means it
+    ├── BriefError               a brief that cannot be read, with file and line
+    ├── PlanningError            the wanted results cannot be reached
+    │   ├── NotEnoughInputs      says which inputs would close the problem
+    │   ├── ContradictoryInputs  two inputs, or an input and a relation, disagree
+    │   └── AmbiguousRegime      more than one regime agrees with its own test
+    ├── SolvingError             one planned relation gives no value
+    │   ├── NoRoot               with the range that the relation can reach
+    │   └── SeveralRoots         with every root, and the question to answer
+    ├── CheckError               an independent engine disagrees with the program
+    └── OutputError              a file cannot be written
+
+Each class keeps its facts in fields and builds its sentence in ``__str__``; a sentence
+says where, what, which limit, and what to do.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+
+class CalcsheetsError(Exception):
+    """Base of every error that this program raises on purpose."""
+
+
+@dataclass(eq=False)
+class DefinitionError(CalcsheetsError):
+    """A definition of the library contradicts itself.
+
+    Attributes:
+        subject: the relation, quantity, unit, gas or process.
+        reason: what is wrong, as a clause.
+    """
+
+    subject: str
+    reason: str
+
+    def __str__(self) -> str:
+        return f"definition of {self.subject}: {self.reason}"
+
+
+@dataclass(eq=False)
+class UnitError(CalcsheetsError):
+    """A text with a unit that is not understood.
+
+    Attributes:
+        text: the text as typed.
+        reason: what is wrong, as a clause.
+        remedy: what to write instead, as a sentence without its full stop.
+    """
+
+    text: str
+    reason: str
+    remedy: str
+
+    def __str__(self) -> str:
+        return f'"{self.text}": {self.reason}. {self.remedy}.'
+
+
+@dataclass(eq=False)
+class BriefError(CalcsheetsError):
+    """A brief that cannot be read.
+
+    Attributes:
+        file: name of the file as the caller gave it.
+        line: line number counted from 1; 0 where the whole file is meant.
+        where: the key in question, such as ``stations.receiver.p_0``.
+        reason: what is wrong, as a clause.
+        remedy: what to do, as a sentence without its full stop.
+    """
+
+    file: str
+    line: int
+    where: str
+    reason: str
+    remedy: str
+
+    def __str__(self) -> str:
+        place = f"{self.file}:{self.line}" if self.line else self.file
+        where = f" {self.where}:" if self.where else ""
+        return f"{place}:{where} {self.reason}. {self.remedy}."
+
+
+class PlanningError(CalcsheetsError):
+    """The wanted results cannot be reached from the inputs."""
+
+
+@dataclass(eq=False)
+class NotEnoughInputs(PlanningError):
+    """A wanted quantity does not follow from the inputs.
+
+    Attributes:
+        wanted: the key that cannot be reached, such as ``mdot@orifice``.
+        title: the quantity and its place in words.
+        closing: sets of additional inputs, each of which would close the problem, best first.
+    """
+
+    wanted: str
+    title: str
+    closing: tuple[tuple[str, ...], ...]
+
+    def __str__(self) -> str:
+        head = f"{self.wanted} ({self.title}) does not follow from the inputs"
+        if not self.closing:
+            return (
+                f"{head}: no relation offered by the path gives it. "
+                "Add the process that determines it to [[path]], or correct the name."
+            )
+        sets = "; or ".join(" and ".join(names) for names in self.closing)
+        return f"{head}. Give also: {sets}."
+
+
+@dataclass(eq=False)
+class ContradictoryInputs(PlanningError):
+    """Two values for one quantity disagree.
+
+    Attributes:
+        quantity: key of the quantity, such as ``c_p@gas``.
+        given: the value as given, with unit.
+        derived: the value that the other inputs lead to, with unit.
+        relation: title of the relation that leads to it.
+        inputs: keys of the inputs that lead to it.
+        difference: relative difference, derived over given minus one.
+    """
+
+    quantity: str
+    given: str
+    derived: str
+    relation: str
+    inputs: tuple[str, ...]
+    difference: float
+
+    def __str__(self) -> str:
+        return (
+            f"{self.quantity} is given as {self.given}, but {', '.join(self.inputs)} lead to "
+            f"{self.derived} by {self.relation}: {self.difference:+.3%}. "
+            "Remove one of these inputs, or correct it."
+        )
+
+
+@dataclass(eq=False)
+class AmbiguousRegime(PlanningError):
+    """The inputs agree with none or with several of the regimes of a process.
+
+    Attributes:
+        place: name of the process.
+        agreeing: the regimes whose own test agrees.
+        tried: all regimes that were tried.
+    """
+
+    place: str
+    agreeing: tuple[str, ...]
+    tried: tuple[str, ...]
+
+    def __str__(self) -> str:
+        if self.agreeing:
+            found = " and ".join(self.agreeing)
+            return (
+                f"process {self.place}: the inputs agree with more than one regime ({found}). "
+                f'Which is meant? State it as regime = "{self.agreeing[0]}" in its [[path]] entry.'
+            )
+        return (
+            f"process {self.place}: each regime was tried ({', '.join(self.tried)}) and none "
+            "agrees with its own test. Check the inputs of this process."
+        )
+
+
+class SolvingError(CalcsheetsError):
+    """One planned relation does not give its unknown."""
+
+
+@dataclass(eq=False)
+class NoRoot(SolvingError):
+    """No value of the unknown inside its bounds satisfies the relation.
+
+    Attributes:
+        relation: title of the relation.
+        unknown: key of the unknown.
+        bounds: the interval searched, as text.
+        reached: the range that the relation reaches inside the bounds, as text.
+        asked: what the other side asks for, as text.
+    """
+
+    relation: str
+    unknown: str
+    bounds: str
+    reached: str
+    asked: str
+
+    def __str__(self) -> str:
+        return (
+            f"{self.relation}: no {self.unknown} within {self.bounds} satisfies it; "
+            f"there the relation reaches {self.reached}, asked is {self.asked}. "
+            "Check the inputs of this step."
+        )
+
+
+@dataclass(eq=False)
+class SeveralRoots(SolvingError):
+    """More than one value of the unknown satisfies the relation, and no branch is stated.
+
+    Attributes:
+        relation: title of the relation.
+        unknown: key of the unknown.
+        roots: each root as text, in rising order.
+        branches: the branch names that may be stated.
+        place: where to state the branch.
+    """
+
+    relation: str
+    unknown: str
+    roots: tuple[str, ...]
+    branches: tuple[str, ...]
+    place: str
+
+    def __str__(self) -> str:
+        names = " or ".join(f'branch = "{name}"' for name in self.branches)
+        remedy = (
+            f"State {names} at {self.place}"
+            if self.branches
+            else f"Give {self.unknown}, or an input that decides it"
+        )
+        return (
+            f"{self.relation}: {self.unknown} may be {' or '.join(self.roots)}. "
+            f"Which is meant? {remedy}."
+        )
+
+
+@dataclass(eq=False)
+class CheckError(CalcsheetsError):
+    """An independent engine finds another value than the program.
+
+    Attributes:
+        engine: the engine that recalculated.
+        cell: sheet and cell.
+        stored: the value that the program stored.
+        found: the value that the engine found.
+    """
+
+    engine: str
+    cell: str
+    stored: str
+    found: str
+
+    def __str__(self) -> str:
+        return (
+            f"{self.cell}: the program computed {self.stored}, {self.engine} finds {self.found}. "
+            "The workbook was not written; report this as a fault of the program."
+        )
+
+
+@dataclass(eq=False)
+class OutputError(CalcsheetsError):
+    """A file cannot be written or read.
+
+    Attributes:
+        path: the file.
+        reason: what the system said, as a clause.
+        remedy: what to do, as a sentence without its full stop.
+    """
+
+    path: str
+    reason: str
+    remedy: str
+
+    def __str__(self) -> str:
+        return f"{self.path}: {self.reason}. {self.remedy}."

@@ -1,0 +1,373 @@
+"""The tree of an equation, kept in the order in which the equation was published.
+
+A computer-algebra system reorders what it is given, so algebra is done there and the printed
+form is kept here. Trees are frozen; operators on symbols build them:
+
+>>> from calcsheets.expressions import sqrt, symbols
+>>> a, gamma, R, T = symbols("a gamma R T")
+>>> equation = a.equals(sqrt(gamma * R * T))
+"""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Mapping
+from dataclasses import dataclass
+from fractions import Fraction
+from functools import cached_property
+
+from ..errors import DefinitionError
+from ..quantities import Dimension, Quantity, catalogue
+from ..quantities.dimension import ONE, dimension
+
+Plain = int | Fraction
+
+
+class Expr:
+    """A node of an expression tree. Operators keep the order of their operands."""
+
+    def __add__(self, other: Expr | Plain) -> Expr:
+        return Sum((*_terms(self), as_expr(other)))
+
+    def __radd__(self, other: Plain) -> Expr:
+        return as_expr(other) + self
+
+    def __sub__(self, other: Expr | Plain) -> Expr:
+        return Sum((*_terms(self), Negative(as_expr(other))))
+
+    def __rsub__(self, other: Plain) -> Expr:
+        return as_expr(other) - self
+
+    def __mul__(self, other: Expr | Plain) -> Expr:
+        return Product((*_factors(self), *_factors(as_expr(other))))
+
+    def __rmul__(self, other: Plain) -> Expr:
+        return as_expr(other) * self
+
+    def __truediv__(self, other: Expr | Plain) -> Expr:
+        return Quotient(self, as_expr(other))
+
+    def __rtruediv__(self, other: Plain) -> Expr:
+        return Quotient(as_expr(other), self)
+
+    def __pow__(self, exponent: Expr | Plain) -> Expr:
+        return Power(self, as_expr(exponent))
+
+    def __neg__(self) -> Expr:
+        return Negative(self)
+
+    def equals(self, other: Expr | Plain) -> Equation:
+        """Return the equation of this expression with another."""
+        return Equation(self, as_expr(other))
+
+    def at_most(self, other: Expr | Plain) -> Condition:
+        """Return the condition that this is at most the other."""
+        return Condition(self, "<=", as_expr(other))
+
+    def at_least(self, other: Expr | Plain) -> Condition:
+        """Return the condition that this is at least the other."""
+        return Condition(self, ">=", as_expr(other))
+
+    def below(self, other: Expr | Plain) -> Condition:
+        """Return the condition that this is less than the other."""
+        return Condition(self, "<", as_expr(other))
+
+    def above(self, other: Expr | Plain) -> Condition:
+        """Return the condition that this is greater than the other."""
+        return Condition(self, ">", as_expr(other))
+
+
+@dataclass(frozen=True)
+class Symbol(Expr):
+    """A quantity in a role.
+
+    Attributes:
+        quantity: symbol of the quantity in the vocabulary.
+        role: whose quantity it is; empty for the station itself. See ``relations.roles``.
+    """
+
+    quantity: str
+    role: str = ""
+
+    def __post_init__(self) -> None:
+        if self.quantity not in catalogue():
+            raise DefinitionError(f"symbol {self.quantity}", "no such quantity in the vocabulary")
+
+    @property
+    def definition(self) -> Quantity:
+        """The quantity that the symbol stands for."""
+        return catalogue()[self.quantity]
+
+    def of(self, role: str) -> Symbol:
+        """Return the same quantity in another role."""
+        return Symbol(self.quantity, role)
+
+    def __str__(self) -> str:
+        return f"{self.quantity}.{self.role}" if self.role else self.quantity
+
+
+@dataclass(frozen=True)
+class Number(Expr):
+    """An exact number."""
+
+    value: Fraction
+
+
+@dataclass(frozen=True)
+class Constant(Expr):
+    """A constant of nature or of a definition; see ``CONSTANTS``."""
+
+    name: str
+
+
+@dataclass(frozen=True)
+class Sum(Expr):
+    """Terms added in order; a subtracted term is a ``Negative``."""
+
+    terms: tuple[Expr, ...]
+
+
+@dataclass(frozen=True)
+class Negative(Expr):
+    """The operand with the opposite sign."""
+
+    operand: Expr
+
+
+@dataclass(frozen=True)
+class Product(Expr):
+    """Factors multiplied in order."""
+
+    factors: tuple[Expr, ...]
+
+
+@dataclass(frozen=True)
+class Quotient(Expr):
+    """A fraction."""
+
+    numerator: Expr
+    denominator: Expr
+
+
+@dataclass(frozen=True)
+class Power(Expr):
+    """A base raised to an exponent."""
+
+    base: Expr
+    exponent: Expr
+
+
+@dataclass(frozen=True)
+class Root(Expr):
+    """The square root, never negative."""
+
+    radicand: Expr
+
+
+@dataclass(frozen=True)
+class Function(Expr):
+    """A function of one plain number: one of ``FUNCTIONS``."""
+
+    name: str
+    argument: Expr
+
+    def __post_init__(self) -> None:
+        if self.name not in FUNCTIONS:
+            raise DefinitionError(f"function {self.name}", "it is not one of those known")
+
+
+FUNCTIONS = ("exp", "ln", "sin", "cos", "tan", "arcsin", "arccos", "arctan")
+
+
+@dataclass(frozen=True)
+class Equation:
+    """Two sides that are equal."""
+
+    left: Expr
+    right: Expr
+
+    @property
+    def symbols(self) -> tuple[Symbol, ...]:
+        """Every symbol once, in order of appearance."""
+        return tuple(dict.fromkeys((*symbols_in(self.left), *symbols_in(self.right))))
+
+
+@dataclass(frozen=True)
+class Condition:
+    """A comparison of two sides by ``<``, ``<=``, ``>`` or ``>=``."""
+
+    left: Expr
+    comparison: str
+    right: Expr
+
+    @property
+    def symbols(self) -> tuple[Symbol, ...]:
+        """Every symbol once, in order of appearance."""
+        return tuple(dict.fromkeys((*symbols_in(self.left), *symbols_in(self.right))))
+
+
+@dataclass(frozen=True)
+class ConstantDefinition:
+    """A constant with its source.
+
+    Attributes:
+        name: name in expressions.
+        title: the constant in words.
+        value: exact value in coherent SI; ``None`` for π.
+        dimension: its dimension.
+        base: letter for printing.
+        subscript: subscript for printing.
+        source: where the value is laid down.
+        known: how we know it.
+    """
+
+    name: str
+    title: str
+    value: Fraction | None
+    dimension: Dimension
+    base: str
+    subscript: str
+    source: str
+    known: str
+
+    @cached_property
+    def text(self) -> str:
+        """The value as a decimal text; ``π`` for π."""
+        return "π" if self.value is None else decimal_text(self.value)
+
+
+CONSTANTS: Mapping[str, ConstantDefinition] = {
+    definition.name: definition
+    for definition in (
+        ConstantDefinition(
+            "pi", "ratio of circumference to diameter", None, ONE, "π", "", "mathematics", "common practice"
+        ),
+        ConstantDefinition(
+            "R_u",
+            "molar gas constant",
+            Fraction("8.31446261815324"),
+            dimension(kg=1, m=2, s=-2, K=-1, mol=-1),
+            "R",
+            "u",
+            "CODATA 2018 and 2022, exact by the SI of 2019",
+            "library",
+        ),
+    )
+}
+
+
+def as_expr(value: Expr | Plain) -> Expr:
+    """Return an expression; whole numbers and fractions become exact numbers."""
+    if isinstance(value, Expr):
+        return value
+    if isinstance(value, int | Fraction):
+        return Number(Fraction(value))
+    raise DefinitionError(f"expression {value!r}", "only exact numbers may stand in an equation")
+
+
+def number(text: str) -> Number:
+    """Return the exact number written as a decimal or a fraction: ``"0.62"``, ``"1/2"``."""
+    return Number(Fraction(text))
+
+
+def symbols(names: str) -> tuple[Symbol, ...]:
+    """Return the symbols with these names, separated by spaces."""
+    return tuple(Symbol(name) for name in names.split())
+
+
+def sqrt(radicand: Expr) -> Expr:
+    """Return the square root."""
+    return Root(radicand)
+
+
+def ln(argument: Expr) -> Expr:
+    """Return the natural logarithm."""
+    return Function("ln", argument)
+
+
+def exp(argument: Expr) -> Expr:
+    """Return the exponential."""
+    return Function("exp", argument)
+
+
+PI = Constant("pi")
+MOLAR_GAS_CONSTANT = Constant("R_u")
+
+
+def children(expr: Expr) -> tuple[Expr, ...]:
+    """Return the operands of a node, in order."""
+    match expr:
+        case Sum(terms):
+            return terms
+        case Product(factors):
+            return factors
+        case Quotient(numerator, denominator):
+            return (numerator, denominator)
+        case Power(base, exponent):
+            return (base, exponent)
+        case Negative(operand) | Root(operand) | Function(_, operand):
+            return (operand,)
+        case _:
+            return ()
+
+
+def symbols_in(expr: Expr) -> Iterator[Symbol]:
+    """Yield every occurrence of a symbol, in order."""
+    if isinstance(expr, Symbol):
+        yield expr
+    for child in children(expr):
+        yield from symbols_in(child)
+
+
+def constants_in(expr: Expr) -> Iterator[Constant]:
+    """Yield every occurrence of a constant, in order."""
+    if isinstance(expr, Constant):
+        yield expr
+    for child in children(expr):
+        yield from constants_in(child)
+
+
+def substitute(expr: Expr, values: Mapping[Symbol, Expr]) -> Expr:
+    """Return the expression with symbols replaced."""
+    match expr:
+        case Symbol():
+            return values.get(expr, expr)
+        case Sum(terms):
+            return Sum(tuple(substitute(term, values) for term in terms))
+        case Product(factors):
+            return Product(tuple(substitute(factor, values) for factor in factors))
+        case Quotient(numerator, denominator):
+            return Quotient(substitute(numerator, values), substitute(denominator, values))
+        case Power(base, exponent):
+            return Power(substitute(base, values), substitute(exponent, values))
+        case Negative(operand):
+            return Negative(substitute(operand, values))
+        case Root(radicand):
+            return Root(substitute(radicand, values))
+        case Function(name, argument):
+            return Function(name, substitute(argument, values))
+        case _:
+            return expr
+
+
+def decimal_text(value: Fraction) -> str:
+    """Return a finite decimal as text, or numerator/denominator where there is none."""
+    denominator = value.denominator
+    digits = 0
+    while denominator % 10 == 0 or denominator % 5 == 0 or denominator % 2 == 0:
+        denominator = denominator // (10 if denominator % 10 == 0 else 5 if denominator % 5 == 0 else 2)
+        digits += 1
+    if denominator != 1:
+        return f"{value.numerator}/{value.denominator}"
+    scaled = value * 10**digits
+    text = f"{abs(scaled.numerator):0{digits + 1}d}"
+    whole, decimals = (text[:-digits], text[-digits:].rstrip("0")) if digits else (text, "")
+    sign = "-" if value < 0 else ""
+    return f"{sign}{whole}.{decimals}" if decimals else f"{sign}{whole}"
+
+
+def _terms(expr: Expr) -> tuple[Expr, ...]:
+    return expr.terms if isinstance(expr, Sum) else (expr,)
+
+
+def _factors(expr: Expr) -> tuple[Expr, ...]:
+    return expr.factors if isinstance(expr, Product) else (expr,)

@@ -1,0 +1,28 @@
+"""Stage 1, vocabulary: names, symbols, dimensions, bounds and the closed list of units."""
+
+from .catalogue import BAROMETRIC, GAUGE_OF, catalogue
+from .dimension import Dimension
+from .measured import Measured, find_unit, quantity_stated, read_measured
+from .quantity import Kind, Notation, Quantity, Variable
+from .reference_states import REFERENCE_STATES, ReferenceState
+from .units import Unit, all_units, units_by_name
+
+__all__ = [
+    "BAROMETRIC",
+    "GAUGE_OF",
+    "REFERENCE_STATES",
+    "Dimension",
+    "Kind",
+    "Measured",
+    "Notation",
+    "Quantity",
+    "ReferenceState",
+    "Unit",
+    "Variable",
+    "all_units",
+    "catalogue",
+    "find_unit",
+    "quantity_stated",
+    "read_measured",
+    "units_by_name",
+]
