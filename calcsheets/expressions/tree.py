@@ -14,10 +14,11 @@ from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
 from fractions import Fraction
 from functools import cached_property
+from types import MappingProxyType
 
 from ..errors import DefinitionError
-from ..quantities import Dimension, Quantity, catalogue
-from ..quantities.dimension import ONE, dimension
+from ..quantities import REFERENCE_STATES, Dimension, Quantity, catalogue
+from ..quantities.dimension import MOLAR_HEAT, ONE, PRESSURE, TEMPERATURE
 
 Plain = int | Fraction
 
@@ -231,28 +232,55 @@ class ConstantDefinition:
 
     @cached_property
     def text(self) -> str:
-        """The value as a decimal text; ``π`` for π."""
+        """The exact value as text; ``π`` for π."""
         return "π" if self.value is None else decimal_text(self.value)
 
 
-CONSTANTS: Mapping[str, ConstantDefinition] = {
-    definition.name: definition
-    for definition in (
+def _constants() -> Mapping[str, ConstantDefinition]:
+    definitions = [
         ConstantDefinition(
-            "pi", "ratio of circumference to diameter", None, ONE, "π", "", "mathematics", "common practice"
+            "pi",
+            "ratio of circumference to diameter",
+            None,
+            ONE,
+            "π",
+            "",
+            "mathematics",
+            "common practice",
         ),
         ConstantDefinition(
             "R_u",
             "molar gas constant",
             Fraction("8.31446261815324"),
-            dimension(kg=1, m=2, s=-2, K=-1, mol=-1),
+            MOLAR_HEAT,
             "R",
             "u",
             "CODATA 2018 and 2022, exact by the SI of 2019",
             "library",
         ),
-    )
-}
+    ]
+    for state in REFERENCE_STATES:
+        for letter, value, dimension, word in (
+            ("T", state.temperature, TEMPERATURE, "temperature"),
+            ("p", state.pressure, PRESSURE, "pressure"),
+        ):
+            if value is not None:
+                definitions.append(
+                    ConstantDefinition(
+                        f"{letter}_{state.name}",
+                        f"{word} of the reference state {state.title}",
+                        value,
+                        dimension,
+                        letter,
+                        state.name,
+                        state.source,
+                        state.known,
+                    )
+                )
+    return MappingProxyType({definition.name: definition for definition in definitions})
+
+
+CONSTANTS: Mapping[str, ConstantDefinition] = _constants()
 
 
 def as_expr(value: Expr | Plain) -> Expr:
@@ -354,7 +382,9 @@ def decimal_text(value: Fraction) -> str:
     denominator = value.denominator
     digits = 0
     while denominator % 10 == 0 or denominator % 5 == 0 or denominator % 2 == 0:
-        denominator = denominator // (10 if denominator % 10 == 0 else 5 if denominator % 5 == 0 else 2)
+        denominator = denominator // (
+            10 if denominator % 10 == 0 else 5 if denominator % 5 == 0 else 2
+        )
         digits += 1
     if denominator != 1:
         return f"{value.numerator}/{value.denominator}"

@@ -32,7 +32,16 @@ def _q(  # noqa: PLR0913 - one row of a table
     reference: str = "",
 ) -> Quantity:
     return Quantity(
-        symbol, title, notation, dimension, Fraction(low), Fraction(high), unit, kind, reference
+        symbol,
+        title,
+        notation,
+        dimension,
+        Fraction(low),
+        Fraction(high),
+        unit,
+        kind,
+        reference,
+        _home(symbol),
     )
 
 
@@ -60,9 +69,7 @@ def _states() -> Iterator[Quantity]:
         ("T", "static temperature", ""),
         ("T_0", "stagnation temperature", "0"),
     ):
-        yield _q(
-            symbol, title, n("T", subscript), dim.TEMPERATURE, "K", high="100000", kind=level
-        )
+        yield _q(symbol, title, n("T", subscript), dim.TEMPERATURE, "K", high="100000", kind=level)
     yield _q("rho", "density", n("ρ"), dim.DENSITY, "kg/m3", high="1e6")
     yield _q("rho_0", "stagnation density", n("ρ", "0"), dim.DENSITY, "kg/m3", high="1e6")
     yield _q("v", "specific volume", n("v"), dim.SPECIFIC_VOLUME, "m3/kg")
@@ -72,7 +79,7 @@ def _states() -> Iterator[Quantity]:
     yield _q("a_0", "stagnation speed of sound", n("a", "0"), dim.VELOCITY, "m/s", high="1e7")
     yield _q("u_max", "maximum velocity", n("u", "max"), dim.VELOCITY, "m/s", high="1e7")
     yield _q("q_dyn", "dynamic pressure", n("q"), pressure, "Pa", kind=Kind.DIFFERENTIAL)
-    yield _q("mu", "Mach angle", n("μ"), dim.ONE, "°", high="1.5707963267948966")
+    yield _q("mu", "Mach angle", n("μ"), dim.ONE, "rad", high="1.5707963267948966")
     for symbol, title, base, dimension, unit, kind in (
         ("p_cr", "critical pressure, at M = 1", "p", pressure, "Pa", absolute),
         ("T_cr", "critical temperature, at M = 1", "T", dim.TEMPERATURE, "K", level),
@@ -87,13 +94,32 @@ def _states() -> Iterator[Quantity]:
 def _gas() -> Iterator[Quantity]:
     n = Notation
     yield _q("R", "specific gas constant", n("R"), dim.SPECIFIC_HEAT, "J/(kg*K)", high="1e5")
-    yield _q("M_w", "molar mass", n("M", "w"), dim.MOLAR_MASS, "g/mol", high="10")
+    yield _q("M_w", "molar mass", n("M", "w"), dim.MOLAR_MASS, "kg/mol", high="10")
+    yield _q("gamma", "ratio of specific heats", n("γ"), dim.ONE, "1", low="1.000001", high="1.7")
     yield _q(
-        "gamma", "ratio of specific heats", n("γ"), dim.ONE, "1", low="1.000001", high="1.7"
+        "c_p",
+        "specific heat at constant pressure",
+        n("c", "p"),
+        dim.SPECIFIC_HEAT,
+        "J/(kg*K)",
+        high="1e6",
     )
-    yield _q("c_p", "specific heat at constant pressure", n("c", "p"), dim.SPECIFIC_HEAT, "J/(kg*K)", high="1e6")
-    yield _q("c_v", "specific heat at constant volume", n("c", "v"), dim.SPECIFIC_HEAT, "J/(kg*K)", high="1e6")
-    yield _q("C_p", "molar heat capacity at constant pressure", n("C", "p,m"), dim.MOLAR_HEAT, "J/(mol*K)", high="1e5")
+    yield _q(
+        "c_v",
+        "specific heat at constant volume",
+        n("c", "v"),
+        dim.SPECIFIC_HEAT,
+        "J/(kg*K)",
+        high="1e6",
+    )
+    yield _q(
+        "C_p",
+        "molar heat capacity at constant pressure",
+        n("C", "p,m"),
+        dim.MOLAR_HEAT,
+        "J/(mol*K)",
+        high="1e5",
+    )
     yield _q("x", "mole fraction", n("x"), dim.ONE, "1", high="1.000000001")
     yield _q("w", "mass fraction", n("w"), dim.ONE, "1", high="1.000000001")
     yield _q("n", "polytropic exponent", n("n"), dim.ONE, "1", low="-100", high="100")
@@ -130,8 +156,19 @@ def _changes() -> Iterator[Quantity]:
     yield _q("ds", "change of specific entropy", n("Δs"), dim.SPECIFIC_HEAT, "J/(kg*K)", low="-1e9")
     yield _q("q", "heat added per mass", n("q"), energy, "J/kg", low="-1e12")
     yield _q("w_s", "shaft work done by the gas per mass", n("w", "s"), energy, "J/kg", low="-1e12")
-    yield _q("w_b", "boundary work done by the gas per mass", n("w", "b"), energy, "J/kg", low="-1e12")
-    yield _q("dp", "pressure difference", n("Δp"), dim.PRESSURE, "Pa", low="-1e10", high="1e10", kind=Kind.DIFFERENTIAL)
+    yield _q(
+        "w_b", "boundary work done by the gas per mass", n("w", "b"), energy, "J/kg", low="-1e12"
+    )
+    yield _q(
+        "dp",
+        "pressure difference",
+        n("Δp"),
+        dim.PRESSURE,
+        "Pa",
+        low="-1e10",
+        high="1e10",
+        kind=Kind.DIFFERENTIAL,
+    )
 
 
 def _vessel_and_site() -> Iterator[Quantity]:
@@ -141,11 +178,51 @@ def _vessel_and_site() -> Iterator[Quantity]:
     yield _q("N", "amount of substance", n("N"), dim.AMOUNT, "mol")
     yield _q("dm", "mass discharged or filled", n("Δm"), dim.MASS, "kg")
     yield _q("t", "time", n("t"), dim.TIME, "s")
-    yield _q("p_atm", "atmospheric pressure", n("p", "atm"), dim.PRESSURE, "Pa", high="1e7", kind=Kind.ABSOLUTE)
-    yield _q("T_atm", "atmospheric temperature", n("T", "atm"), dim.TEMPERATURE, "K", high="10000", kind=Kind.LEVEL)
-    yield _q("p_ref", "reference pressure", n("p", "ref"), dim.PRESSURE, "Pa", high="1e7", kind=Kind.ABSOLUTE)
-    yield _q("T_ref", "reference temperature", n("T", "ref"), dim.TEMPERATURE, "K", high="10000", kind=Kind.LEVEL)
+    yield _q(
+        "p_atm",
+        "atmospheric pressure",
+        n("p", "atm"),
+        dim.PRESSURE,
+        "Pa",
+        high="1e7",
+        kind=Kind.ABSOLUTE,
+    )
+    yield _q(
+        "T_atm",
+        "atmospheric temperature",
+        n("T", "atm"),
+        dim.TEMPERATURE,
+        "K",
+        high="10000",
+        kind=Kind.LEVEL,
+    )
+    yield _q(
+        "p_ref",
+        "reference pressure",
+        n("p", "ref"),
+        dim.PRESSURE,
+        "Pa",
+        high="1e7",
+        kind=Kind.ABSOLUTE,
+    )
+    yield _q(
+        "T_ref",
+        "reference temperature",
+        n("T", "ref"),
+        dim.TEMPERATURE,
+        "K",
+        high="10000",
+        kind=Kind.LEVEL,
+    )
     yield _q("regime", "regime", n("regime"), dim.ONE, "1", kind=Kind.STATE)
+
+
+_GAS = frozenset({"R", "M_w", "gamma", "c_p", "c_v", "C_p"})
+_SITE = frozenset({"p_atm", "T_atm", "p_ref", "T_ref"})
+
+
+def _home(symbol: str) -> str:
+    return "gas" if symbol in _GAS else "site" if symbol in _SITE else "station"
 
 
 @cache

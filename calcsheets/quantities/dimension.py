@@ -15,9 +15,7 @@ class Dimension:
     exponents: tuple[Fraction, ...] = (Fraction(0),) * len(_BASE_UNITS)
 
     def __mul__(self, other: Dimension) -> Dimension:
-        return Dimension(
-            tuple(a + b for a, b in zip(self.exponents, other.exponents, strict=True))
-        )
+        return Dimension(tuple(a + b for a, b in zip(self.exponents, other.exponents, strict=True)))
 
     def __truediv__(self, other: Dimension) -> Dimension:
         return self * other**-1

@@ -60,7 +60,9 @@ def read_measured(text: str) -> Measured:
     match = _NUMBER.fullmatch(text.translate(_SPELLING))
     if match is None:
         raise UnitError(
-            text, "it does not begin with a number", 'Write a number and a unit, such as "12.0 bar(g)"'
+            text,
+            "it does not begin with a number",
+            'Write a number and a unit, such as "12.0 bar(g)"',
         )
     number, rest = match.groups()
     if re.match(r"\s*[,'_ ]\s*\d", rest):

@@ -53,7 +53,8 @@ class Quantity:
         high: upper bound in coherent SI units up to which a root is searched.
         kind: what a value is beyond its dimension.
         reference: name of the reference state of a volume, else empty.
-        unit: default unit for printing, a name of the closed unit list.
+        unit: coherent SI unit for printing, a name of the closed unit list.
+        home: whose quantity it is: ``station`` (also a process), ``gas`` or ``site``.
     """
 
     symbol: str
@@ -65,6 +66,7 @@ class Quantity:
     unit: str
     kind: Kind = Kind.PLAIN
     reference: str = ""
+    home: str = "station"
 
     def __post_init__(self) -> None:
         if self.low >= self.high:

@@ -131,7 +131,9 @@ def _temperature_units() -> Iterator[Unit]:
             pint=f"delta_{pint}",
         )
     yield Unit("K", Fraction(1), dim.TEMPERATURE, Kind.PLAIN, ("kelvin",), pint="kelvin")
-    yield Unit("°R", _RANKINE, dim.TEMPERATURE, Kind.PLAIN, ("degR", "R", "ºR"), pint="degree_Rankine")
+    yield Unit(
+        "°R", _RANKINE, dim.TEMPERATURE, Kind.PLAIN, ("degR", "R", "ºR"), pint="degree_Rankine"
+    )
 
 
 _VOLUME_TIMES = (("s", Fraction(1)), ("min", _MINUTE), ("h", _HOUR), ("d", _DAY))
@@ -326,14 +328,10 @@ def _specific_units() -> Iterator[Unit]:
         "ft3/lbm", _FOOT**3 / _POUND, dim.SPECIFIC_VOLUME, aliases=("ft3/lb",), pint="foot**3/pound"
     )
     yield u("kg/(m2*s)", one, dim.MASS_FLUX, pint="kilogram/meter**2/second")
-    yield u(
-        "lbm/(ft2*s)", _POUND / _FOOT**2, dim.MASS_FLUX, pint="pound/foot**2/second"
-    )
+    yield u("lbm/(ft2*s)", _POUND / _FOOT**2, dim.MASS_FLUX, pint="pound/foot**2/second")
     yield u("J/kg", one, dim.SPECIFIC_ENERGY, pint="joule/kilogram")
     yield u("kJ/kg", kilo, dim.SPECIFIC_ENERGY, pint="kilojoule/kilogram")
-    yield u(
-        "Btu/lbm", _BTU / _POUND, dim.SPECIFIC_ENERGY, aliases=("Btu/lb",), pint="Btu_it/pound"
-    )
+    yield u("Btu/lbm", _BTU / _POUND, dim.SPECIFIC_ENERGY, aliases=("Btu/lb",), pint="Btu_it/pound")
     yield u(
         "ft*lbf/lbm",
         _FOOT * _G_N,
@@ -359,7 +357,11 @@ def _specific_units() -> Iterator[Unit]:
     )
     yield u("kg/mol", one, dim.MOLAR_MASS, pint="kilogram/mole")
     yield u(
-        "g/mol", 1 / kilo, dim.MOLAR_MASS, aliases=("kg/kmol", "lbm/lbmol", "lb/lbmol"), pint="gram/mole"
+        "g/mol",
+        1 / kilo,
+        dim.MOLAR_MASS,
+        aliases=("kg/kmol", "lbm/lbmol", "lb/lbmol"),
+        pint="gram/mole",
     )
     yield u("J/(mol*K)", one, dim.MOLAR_HEAT, aliases=("kJ/(kmol*K)",), pint="joule/mole/kelvin")
 

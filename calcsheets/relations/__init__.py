@@ -1,0 +1,17 @@
+"""Stage 3, library: published equations with source, limits, assumptions and cautions."""
+
+from .library import STATION_KINDS, Library, load_library
+from .relation import Branch, Chapter, Limit, Process, Regime, Relation, Source
+
+__all__ = [
+    "STATION_KINDS",
+    "Branch",
+    "Chapter",
+    "Library",
+    "Limit",
+    "Process",
+    "Regime",
+    "Relation",
+    "Source",
+    "load_library",
+]

@@ -1,0 +1,91 @@
+"""The library: all chapters as one value."""
+
+from __future__ import annotations
+
+import hashlib
+from collections.abc import Mapping
+from dataclasses import dataclass, replace
+from functools import cache, cached_property
+from types import MappingProxyType
+
+from ..errors import DefinitionError
+from ..expressions import expression_to_mathml
+from . import isentropic, orifices, shocks, streams, thermodynamics, vessels
+from .relation import Chapter, Process, Regime, Relation
+
+STATION_KINDS = ("stream", "vessel")
+
+
+@dataclass(frozen=True)
+class Library:
+    """Chapters, in order.
+
+    Attributes:
+        chapters: every chapter, its relations marked with its name.
+    """
+
+    chapters: tuple[Chapter, ...]
+
+    def __post_init__(self) -> None:
+        names = [item.name for item in (*self.relations, *self.regimes)]
+        for name in sorted(set(names)):
+            if names.count(name) > 1:
+                raise DefinitionError(f"relation {name}", "the name is taken twice")
+        offers = {*STATION_KINDS, "gas", "site", *self.processes}
+        for item in (*self.relations, *self.regimes):
+            unknown = sorted(set(item.offered_by) - offers)
+            if unknown:
+                raise DefinitionError(f"relation {item.name}", f"nothing is called {unknown[0]}")
+
+    @cached_property
+    def relations(self) -> tuple[Relation, ...]:
+        """Every relation, chapter by chapter."""
+        return tuple(
+            replace(relation, chapter=chapter.name)
+            for chapter in self.chapters
+            for relation in chapter.relations
+        )
+
+    @cached_property
+    def regimes(self) -> tuple[Regime, ...]:
+        """Every regime test, chapter by chapter."""
+        return tuple(
+            replace(regime, chapter=chapter.name)
+            for chapter in self.chapters
+            for regime in chapter.regimes
+        )
+
+    @cached_property
+    def processes(self) -> Mapping[str, Process]:
+        """Every process by its name."""
+        return MappingProxyType(
+            {process.name: process for chapter in self.chapters for process in chapter.processes}
+        )
+
+    @cached_property
+    def digest(self) -> str:
+        """SHA-256 over the names, equations and sources of all relations and regime tests."""
+        lines = [
+            f"{relation.name} {expression_to_mathml(relation.published)} {relation.source}"
+            for relation in self.relations
+        ]
+        lines += [
+            f"{regime.name} {expression_to_mathml(regime.condition)} {regime.source}"
+            for regime in self.regimes
+        ]
+        return hashlib.sha256("\n".join(lines).encode()).hexdigest()
+
+
+@cache
+def load_library() -> Library:
+    """Return the library that the program ships.
+
+    Raises:
+        DefinitionError: if a relation contradicts itself or another.
+    """
+    return Library(
+        tuple(
+            module.CHAPTER
+            for module in (thermodynamics, isentropic, streams, orifices, vessels, shocks)
+        )
+    )

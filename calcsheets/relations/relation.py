@@ -1,0 +1,201 @@
+"""What a relation is, and the checks that it passes when it is defined."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import Any
+
+from ..errors import DefinitionError
+from ..expressions import Condition, Equation, Expr, Symbol, dimension_of, equation_to_sympy
+
+KNOWN = ("read in the source", "library", "common practice", "from memory", "brief")
+
+
+@dataclass(frozen=True)
+class Source:
+    """Where a relation is published, and how we know.
+
+    Attributes:
+        document: the publication.
+        edition: year or edition.
+        clause: clause, equation or table; empty where none is claimed.
+        known: one of ``KNOWN``.
+    """
+
+    document: str
+    edition: str
+    clause: str
+    known: str
+
+    def __post_init__(self) -> None:
+        if self.known not in KNOWN:
+            raise DefinitionError(
+                f"source {self.document}", f'"{self.known}" is not one of {KNOWN}'
+            )
+
+    def __str__(self) -> str:
+        text = ", ".join(part for part in (self.document, self.edition, self.clause) if part)
+        return (
+            f"{text} (from memory: confirm in the source)" if self.known == "from memory" else text
+        )
+
+
+@dataclass(frozen=True)
+class Limit:
+    """A condition outside which a relation must not be used.
+
+    Attributes:
+        condition: the condition that must hold.
+        reason: why, as a clause.
+    """
+
+    condition: Condition
+    reason: str
+
+
+@dataclass(frozen=True)
+class Branch:
+    """One of several ranges in each of which a relation has one root.
+
+    Attributes:
+        name: trade name, such as ``subsonic``.
+        condition: comparison of the symbol with a number.
+    """
+
+    name: str
+    condition: Condition
+
+
+@dataclass(frozen=True)
+class Relation:
+    """One published equation.
+
+    Attributes:
+        name: identifier, unique in the library.
+        title: the relation in words.
+        published: the equation as published.
+        source: where it is published.
+        offered_by: station kinds, process names, ``gas`` or ``site`` that offer it.
+        limits: conditions of its use.
+        assumptions: what must be true for it to hold.
+        cautions: where someone can get hurt.
+        regime: outcome of the regime test in which it holds; empty for all.
+        regime_role: role of the process whose regime it is; empty for its own.
+        branches: ranges that part its roots.
+        errs: in which direction it errs outside its assumptions, as a sentence.
+        empirical: whether it rests on measurement and not on the model alone.
+        chapter: set by the chapter that holds it.
+    """
+
+    name: str
+    title: str
+    published: Equation
+    source: Source
+    offered_by: tuple[str, ...]
+    limits: tuple[Limit, ...] = ()
+    assumptions: tuple[str, ...] = ()
+    cautions: tuple[str, ...] = ()
+    regime: str = ""
+    regime_role: str = ""
+    branches: tuple[Branch, ...] = ()
+    errs: str = ""
+    empirical: bool = False
+    chapter: str = ""
+
+    def __post_init__(self) -> None:
+        _require_homogeneous(self.name, self.published.left, self.published.right)
+        for limit in self.limits:
+            _require_homogeneous(self.name, limit.condition.left, limit.condition.right)
+        if not self.offered_by:
+            raise DefinitionError(f"relation {self.name}", "nothing offers it")
+        if not self.published.symbols:
+            raise DefinitionError(f"relation {self.name}", "it relates nothing")
+
+    @property
+    def equation(self) -> Any:
+        """The relation as ``sympy.Eq``, for algebra."""
+        return equation_to_sympy(self.published)
+
+    @property
+    def symbols(self) -> tuple[Symbol, ...]:
+        """Every symbol of the equation once, in order of appearance."""
+        return self.published.symbols
+
+
+@dataclass(frozen=True)
+class Regime:
+    """A test that decides between two mutually exclusive states of a process.
+
+    Attributes:
+        name: identifier, unique in the library.
+        title: what is decided, in words.
+        condition: the test.
+        when_true: the regime if the condition holds.
+        when_false: the regime if it does not.
+        offered_by: processes that it decides.
+        source: where the test is published.
+        chapter: set by the chapter that holds it.
+    """
+
+    name: str
+    title: str
+    condition: Condition
+    when_true: str
+    when_false: str
+    offered_by: tuple[str, ...]
+    source: Source
+    cautions: tuple[str, ...] = ()
+    chapter: str = ""
+
+    def __post_init__(self) -> None:
+        _require_homogeneous(self.name, self.condition.left, self.condition.right)
+
+    @property
+    def symbols(self) -> tuple[Symbol, ...]:
+        """Every symbol of the test once, in order of appearance."""
+        return self.condition.symbols
+
+
+@dataclass(frozen=True)
+class Process:
+    """What can happen between two stations of a path.
+
+    Attributes:
+        name: name in a brief.
+        title: the process in words.
+        needs_through: whether it names the orifice that the gas passes.
+    """
+
+    name: str
+    title: str
+    needs_through: bool = False
+
+
+@dataclass(frozen=True)
+class Chapter:
+    """The relations of one subject.
+
+    Attributes:
+        name: identifier, the name of its file.
+        title: the subject in words.
+        relations: in the order in which they are read.
+        regimes: the regime tests.
+        processes: the processes that the chapter introduces.
+    """
+
+    name: str
+    title: str
+    relations: tuple[Relation, ...]
+    regimes: tuple[Regime, ...] = ()
+    processes: tuple[Process, ...] = ()
+
+
+def _require_homogeneous(name: str, left: Expr, right: Expr) -> None:
+    try:
+        dimensions = dimension_of(left), dimension_of(right)
+    except DefinitionError as problem:
+        raise DefinitionError(f"relation {name}", str(problem)) from problem
+    if dimensions[0] != dimensions[1]:
+        raise DefinitionError(
+            f"relation {name}", f"its sides are in {dimensions[0]} and in {dimensions[1]}"
+        )

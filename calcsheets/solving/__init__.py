@@ -1,0 +1,33 @@
+"""Stage 6, solving: one planned relation and values become one value with its way and proof."""
+
+from .balls import (
+    PRECISION,
+    Ball,
+    decimal_bounds,
+    evaluate,
+    exact_ball,
+    midpoint,
+    working_precision,
+)
+from .moves import ACTIONS, Isolation, Move, isolate, occurrences
+from .solve import OtherRoot, Question, Solution, residual_of, solve
+
+__all__ = [
+    "ACTIONS",
+    "PRECISION",
+    "Ball",
+    "Isolation",
+    "Move",
+    "OtherRoot",
+    "Question",
+    "Solution",
+    "decimal_bounds",
+    "evaluate",
+    "exact_ball",
+    "isolate",
+    "midpoint",
+    "occurrences",
+    "residual_of",
+    "solve",
+    "working_precision",
+]

@@ -1,0 +1,109 @@
+"""Evaluation in ball arithmetic: every value comes with a proved enclosure."""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Mapping
+from fractions import Fraction
+from types import MappingProxyType
+from typing import Any
+
+from flint import arb, ctx, fmpq
+
+from ..errors import DefinitionError
+from ..expressions import (
+    CONSTANTS,
+    Constant,
+    Expr,
+    Function,
+    Negative,
+    Number,
+    Power,
+    Product,
+    Quotient,
+    Root,
+    Sum,
+    Symbol,
+)
+
+Ball = Any  # flint.arb has no type information
+PRECISION = 192
+
+_FUNCTIONS: Mapping[str, Callable[[Ball], Ball]] = MappingProxyType(
+    {
+        "exp": lambda x: x.exp(),
+        "ln": lambda x: x.log(),
+        "sin": lambda x: x.sin(),
+        "cos": lambda x: x.cos(),
+        "tan": lambda x: x.tan(),
+        "arcsin": lambda x: x.asin(),
+        "arccos": lambda x: x.acos(),
+        "arctan": lambda x: x.atan(),
+    }
+)
+
+
+def working_precision() -> Any:
+    """Return the context in which all balls of a calculation are computed."""
+    return ctx.workprec(PRECISION)
+
+
+def exact_ball(value: Fraction, pi_power: int = 0) -> Ball:
+    """Return the ball of an exact fraction times a power of π."""
+    ball = arb(fmpq(value.numerator, value.denominator))
+    return ball * arb.pi() ** pi_power if pi_power else ball
+
+
+def evaluate(expr: Expr, values: Mapping[Symbol, Ball]) -> Ball:
+    """Return the ball of an expression; not a number where it is undefined.
+
+    Args:
+        expr: the expression.
+        values: a ball in coherent SI for each of its symbols.
+    """
+    match expr:
+        case Symbol():
+            return values[expr]
+        case Number(value):
+            return exact_ball(value)
+        case Constant(name):
+            exact = CONSTANTS[name].value
+            return arb.pi() if exact is None else exact_ball(exact)
+        case Sum(terms):
+            total = evaluate(terms[0], values)
+            for term in terms[1:]:
+                total = total + evaluate(term, values)
+            return total
+        case Product(factors):
+            product = evaluate(factors[0], values)
+            for factor in factors[1:]:
+                product = product * evaluate(factor, values)
+            return product
+        case Quotient(numerator, denominator):
+            return evaluate(numerator, values) / evaluate(denominator, values)
+        case Negative(operand):
+            return -evaluate(operand, values)
+        case Power(base, exponent):
+            return _power(evaluate(base, values), exponent, values)
+        case Root(radicand):
+            return evaluate(radicand, values).sqrt()
+        case Function(name, argument):
+            return _FUNCTIONS[name](evaluate(argument, values))
+    raise DefinitionError(f"expression {expr!r}", "it is no node of an expression tree")
+
+
+def _power(base: Ball, exponent: Expr, values: Mapping[Symbol, Ball]) -> Ball:
+    if isinstance(exponent, Number) and exponent.value.denominator == 1:
+        return base ** int(exponent.value)
+    return base ** evaluate(exponent, values)
+
+
+def midpoint(ball: Ball) -> float:
+    """Return the double nearest to the middle of a ball."""
+    return float(ball.mid())
+
+
+def decimal_bounds(ball: Ball, digits: int = 25) -> tuple[str, str]:
+    """Return decimal texts below and above which the exact value cannot lie."""
+    lower = arb(ball.lower()).str(digits, radius=False)
+    upper = arb(ball.upper()).str(digits, radius=False)
+    return lower, upper

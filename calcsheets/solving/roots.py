@@ -1,0 +1,171 @@
+"""All roots inside the bounds of a quantity, isolated so that none can be missed.
+
+The bounds are cut into cells. Ball arithmetic either proves that a cell holds no root, or
+that the function is monotone in it, or the cell is halved. What stays undecided down to the
+smallest width is kept as a touching root, never dropped.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Callable, Iterator
+from dataclasses import dataclass
+from fractions import Fraction
+
+from flint import arb
+
+from .balls import PRECISION, Ball, exact_ball
+
+_SMALLEST = Fraction(1, 10**12)
+_MOST_CELLS = 20_000
+_TINY = Fraction(1, 10**15)
+_BISECTIONS = 12
+_NEWTON_STEPS = 24
+
+BallFunction = Callable[[Ball], Ball]
+
+
+@dataclass(frozen=True)
+class RootFound:
+    """One root.
+
+    Attributes:
+        value: its ball.
+        touching: whether the function only touches zero there, as far as could be decided.
+    """
+
+    value: Ball
+    touching: bool
+
+
+class TooManyCellsError(ArithmeticError):
+    """The search was given up; nothing is known about the roots."""
+
+
+def isolate_roots(
+    function: BallFunction, slope: BallFunction, low: Fraction, high: Fraction
+) -> tuple[RootFound, ...]:
+    """Return every root between two bounds, in rising order.
+
+    Args:
+        function: continuous function of a ball.
+        slope: its derivative.
+        low: lower bound; zero itself is left out.
+        high: upper bound.
+
+    Raises:
+        TooManyCellsError: if the search does not end within its limit.
+    """
+    found: list[RootFound] = []
+    undecided: list[tuple[Fraction, Fraction]] = []
+    cells = list(reversed(list(_first_cells(low, high))))
+    visited = 0
+    while cells:
+        visited += 1
+        if visited > _MOST_CELLS:
+            raise TooManyCellsError
+        a, b = cells.pop()
+        ball = _interval(a, b)
+        value = function(ball)
+        if value.is_finite() and not value.contains(0):
+            continue
+        rate = slope(ball)
+        if rate.is_finite() and not rate.contains(0):
+            crossing = _crossing(function, a, b)
+            if crossing is not None:
+                if crossing:
+                    found.append(RootFound(_refine(function, slope, a, b), False))
+                continue
+        if b - a <= _SMALLEST * max(abs(a), abs(b), _TINY):
+            undecided.append((a, b))
+            continue
+        middle = (a + b) / 2
+        cells += [(middle, b), (a, middle)]
+    touching = [RootFound(_interval(a, b), True) for a, b in _merged(undecided)]
+    return tuple(sorted(_distinct(found, touching), key=lambda root: float(root.value.mid())))
+
+
+def _first_cells(low: Fraction, high: Fraction) -> Iterator[tuple[Fraction, Fraction]]:
+    """Cells that double in width away from zero, so that every decade is searched alike."""
+    if low < 0:
+        yield low, high
+        return
+    edge = low if low > 0 else high * _TINY
+    while edge * 2 < high:
+        yield edge, edge * 2
+        edge *= 2
+    yield edge, high
+
+
+def _interval(a: Fraction, b: Fraction) -> Ball:
+    return exact_ball(a).union(exact_ball(b))
+
+
+def _crossing(function: BallFunction, a: Fraction, b: Fraction) -> bool | None:
+    """Whether a monotone function changes sign in a cell; ``None`` if an end is undecided."""
+    at_a, at_b = function(exact_ball(a)), function(exact_ball(b))
+    if at_a.contains(0) or at_b.contains(0):
+        return True if _end_is_root(at_a, at_b) else None
+    return bool((at_a > 0) != (at_b > 0))
+
+
+def _end_is_root(at_a: Ball, at_b: Ball) -> bool:
+    """A monotone function whose value at one end is zero has its only root there."""
+    return bool(at_a.contains(0) != at_b.contains(0))
+
+
+def _refine(function: BallFunction, slope: BallFunction, a: Fraction, b: Fraction) -> Ball:
+    """Narrow the only root of a monotone cell by bisection, then by interval Newton steps."""
+    rising = function(exact_ball(b)) > function(exact_ball(a))
+    for _ in range(_BISECTIONS):
+        middle = (a + b) / 2
+        value = function(exact_ball(middle))
+        if value.contains(0):
+            break
+        if (value > 0) == rising:
+            b = middle
+        else:
+            a = middle
+    ball = _interval(a, b)
+    for _ in range(_NEWTON_STEPS):
+        centre = arb(ball.mid())
+        step = centre - function(centre) / slope(ball)
+        if not step.is_finite() or not step.overlaps(ball):
+            break
+        narrowed = step.intersection(ball)
+        if narrowed.rad() >= ball.rad() * arb(0.75):
+            ball = narrowed
+            break
+        ball = narrowed
+    return ball
+
+
+def _merged(cells: list[tuple[Fraction, Fraction]]) -> Iterator[tuple[Fraction, Fraction]]:
+    """Undecided cells that touch are one root."""
+    start: Fraction | None = None
+    end = Fraction(0)
+    for a, b in sorted(cells):
+        if start is not None and a > end + (end - start) + _SMALLEST * abs(end):
+            yield start, end
+            start = None
+        start = a if start is None else start
+        end = b
+    if start is not None:
+        yield start, end
+
+
+def _distinct(found: list[RootFound], touching: list[RootFound]) -> list[RootFound]:
+    """Drop a root that was found from both sides of a cell boundary."""
+    kept: list[RootFound] = list(touching)
+    for root in found:
+        if not any(root.value.overlaps(other.value) for other in kept):
+            kept.append(root)
+    return kept
+
+
+def relative_width(ball: Ball) -> float:
+    """Return the width of a ball over its middle; zero middles count as one."""
+    middle = abs(float(ball.mid())) or 1.0
+    return float(ball.rad()) / middle
+
+
+__all__ = ["PRECISION", "RootFound", "TooManyCellsError", "isolate_roots", "relative_width"]
