@@ -3,6 +3,7 @@
     CalcsheetsError
     ├── DefinitionError          a relation, quantity, gas or process of the library is wrong
     ├── UnitError                text with a unit that cannot be read as an engineer means it
+    ├── UnknownGas               a gas name that is not in the data
     ├── BriefError               a brief that cannot be read, with file and line
     ├── PlanningError            the wanted results cannot be reached
     │   ├── NotEnoughInputs      says which inputs would close the problem
@@ -59,6 +60,26 @@ class UnitError(CalcsheetsError):
 
     def __str__(self) -> str:
         return f'"{self.text}": {self.reason}. {self.remedy}.'
+
+
+@dataclass(eq=False)
+class UnknownGas(CalcsheetsError):
+    """A gas name that the program does not know.
+
+    Attributes:
+        name: the name as typed.
+        near: known names like it.
+    """
+
+    name: str
+    near: tuple[str, ...]
+
+    def __str__(self) -> str:
+        ask = f" Did you mean {' or '.join(self.near)}?" if self.near else ""
+        return (
+            f'the gas "{self.name}" is not known.{ask} '
+            "See calcsheets gases, or give gamma and M_w of your own."
+        )
 
 
 @dataclass(eq=False)

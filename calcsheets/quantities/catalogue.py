@@ -95,7 +95,7 @@ def _gas() -> Iterator[Quantity]:
     n = Notation
     yield _q("R", "specific gas constant", n("R"), dim.SPECIFIC_HEAT, "J/(kg*K)", high="1e5")
     yield _q("M_w", "molar mass", n("M", "w"), dim.MOLAR_MASS, "kg/mol", high="10")
-    yield _q("gamma", "ratio of specific heats", n("γ"), dim.ONE, "1", low="1.000001", high="1.7")
+    yield _q("gamma", "ratio of specific heats", n("γ"), dim.ONE, "1", low="1.01", high="1.7")
     yield _q(
         "c_p",
         "specific heat at constant pressure",

@@ -1,6 +1,7 @@
 """Stage 3, library: published equations with source, limits, assumptions and cautions."""
 
 from .library import STATION_KINDS, Library, load_library
+from .mixtures import mixture_relations
 from .relation import Branch, Chapter, Limit, Process, Regime, Relation, Source
 
 __all__ = [
@@ -14,4 +15,5 @@ __all__ = [
     "Relation",
     "Source",
     "load_library",
+    "mixture_relations",
 ]

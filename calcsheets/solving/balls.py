@@ -28,10 +28,15 @@ from ..expressions import (
 Ball = Any  # flint.arb has no type information
 PRECISION = 192
 
+
+class OutsideDomainError(ArithmeticError):
+    """An operation has no real value anywhere in its operand's ball."""
+
+
 _FUNCTIONS: Mapping[str, Callable[[Ball], Ball]] = MappingProxyType(
     {
         "exp": lambda x: x.exp(),
-        "ln": lambda x: x.log(),
+        "ln": lambda x: _inside(x, x > 0 or x.contains(0)).log(),
         "sin": lambda x: x.sin(),
         "cos": lambda x: x.cos(),
         "tan": lambda x: x.tan(),
@@ -54,11 +59,14 @@ def exact_ball(value: Fraction, pi_power: int = 0) -> Ball:
 
 
 def evaluate(expr: Expr, values: Mapping[Symbol, Ball]) -> Ball:
-    """Return the ball of an expression; not a number where it is undefined.
+    """Return the ball of an expression over the part of its operands where it is defined.
 
     Args:
         expr: the expression.
         values: a ball in coherent SI for each of its symbols.
+
+    Raises:
+        OutsideDomainError: if it is defined nowhere in the balls of its operands.
     """
     match expr:
         case Symbol():
@@ -85,16 +93,36 @@ def evaluate(expr: Expr, values: Mapping[Symbol, Ball]) -> Ball:
         case Power(base, exponent):
             return _power(evaluate(base, values), exponent, values)
         case Root(radicand):
-            return evaluate(radicand, values).sqrt()
+            return _root(evaluate(radicand, values))
         case Function(name, argument):
             return _FUNCTIONS[name](evaluate(argument, values))
     raise DefinitionError(f"expression {expr!r}", "it is no node of an expression tree")
 
 
+def _inside(ball: Ball, possible: bool) -> Ball:
+    if not possible:
+        raise OutsideDomainError
+    return ball
+
+
+def _root(radicand: Ball) -> Ball:
+    if radicand < 0:
+        raise OutsideDomainError
+    if radicand.contains(0):
+        return arb(0).union(arb(radicand.upper()).sqrt())
+    return radicand.sqrt()
+
+
 def _power(base: Ball, exponent: Expr, values: Mapping[Symbol, Ball]) -> Ball:
     if isinstance(exponent, Number) and exponent.value.denominator == 1:
         return base ** int(exponent.value)
-    return base ** evaluate(exponent, values)
+    if base < 0:
+        raise OutsideDomainError
+    power = evaluate(exponent, values)
+    if base.contains(0) and power > 0 and base.upper() > 0:
+        largest = arb(base.upper())
+        return arb(0).union(largest**power if largest > 1 else arb(1).union(largest**power))
+    return base**power
 
 
 def midpoint(ball: Ball) -> float:

@@ -76,7 +76,9 @@ def polynomial_form(equation: Equation, unknown: Symbol) -> PolynomialForm | Non
     names = _symbol_table(squared)
     coefficients = []
     for power in range(degree + 1):
-        coefficient = sympy.factor_terms(polynomial.coeff_monomial(variable ** (shift + step * power)))
+        coefficient = sympy.factor_terms(
+            polynomial.coeff_monomial(variable ** (shift + step * power))
+        )
         tree = _from_sympy(sympy.factor(coefficient), names)
         if tree is None:
             return None
@@ -96,9 +98,7 @@ def _without_root(equation: Equation, unknown: Symbol) -> tuple[Equation, tuple[
         factors = side.factors if isinstance(side, Product) else (side,)
         if any(isinstance(f, Root) and unknown in set(symbols_in(f)) for f in factors):
             two = Number(Fraction(2))
-            squared = Equation(
-                _square(equation.left, two), _square(equation.right, two)
-            )
+            squared = Equation(_square(equation.left, two), _square(equation.right, two))
             return squared, (Move("square", None, squared),)
     return equation, ()
 

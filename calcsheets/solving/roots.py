@@ -13,7 +13,7 @@ from fractions import Fraction
 
 from flint import arb
 
-from .balls import PRECISION, Ball, exact_ball
+from .balls import Ball, OutsideDomainError, exact_ball
 
 _SMALLEST = Fraction(1, 10**12)
 _MOST_CELLS = 20_000
@@ -65,8 +65,8 @@ def isolate_roots(
             raise TooManyCellsError
         a, b = cells.pop()
         ball = _interval(a, b)
-        value = function(ball)
-        if value.is_finite() and not value.contains(0):
+        value = _defined(function, ball)
+        if value is None or (value.is_finite() and not value.contains(0)):
             continue
         rate = slope(ball)
         if rate.is_finite() and not rate.contains(0):
@@ -76,7 +76,8 @@ def isolate_roots(
                     found.append(RootFound(_refine(function, slope, a, b), False))
                 continue
         if b - a <= _SMALLEST * max(abs(a), abs(b), _TINY):
-            undecided.append((a, b))
+            # Not finite down to the smallest width is a pole or the edge of the domain.
+            undecided += [(a, b)] if value.is_finite() else []
             continue
         middle = (a + b) / 2
         cells += [(middle, b), (a, middle)]
@@ -94,6 +95,14 @@ def _first_cells(low: Fraction, high: Fraction) -> Iterator[tuple[Fraction, Frac
         yield edge, edge * 2
         edge *= 2
     yield edge, high
+
+
+def _defined(function: BallFunction, ball: Ball) -> Ball | None:
+    """The function's ball, or ``None`` where the function is defined nowhere in the cell."""
+    try:
+        return function(ball)
+    except OutsideDomainError:
+        return None
 
 
 def _interval(a: Fraction, b: Fraction) -> Ball:
@@ -160,12 +169,3 @@ def _distinct(found: list[RootFound], touching: list[RootFound]) -> list[RootFou
         if not any(root.value.overlaps(other.value) for other in kept):
             kept.append(root)
     return kept
-
-
-def relative_width(ball: Ball) -> float:
-    """Return the width of a ball over its middle; zero middles count as one."""
-    middle = abs(float(ball.mid())) or 1.0
-    return float(ball.rad()) / middle
-
-
-__all__ = ["PRECISION", "RootFound", "TooManyCellsError", "isolate_roots", "relative_width"]

@@ -2,19 +2,19 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
-from dataclasses import dataclass
+from collections.abc import Mapping
+from dataclasses import dataclass, replace
 from fractions import Fraction
 
 from flint import arb
 
 from ..errors import NoRoot, SeveralRoots
 from ..expressions import Condition, Expr, Number, Symbol, derivative, symbols_in
-from ..relations import Branch, Relation
-from .balls import Ball, evaluate, exact_ball
+from ..relations import Relation
+from .balls import Ball, OutsideDomainError, evaluate, exact_ball
 from .moves import Move, isolate
 from .polynomials import polynomial_form
-from .roots import RootFound, TooManyCellsError, isolate_roots
+from .roots import TooManyCellsError, isolate_roots
 
 _SAMPLES = 64
 _RESIDUAL_SCALE = arb(2) ** -60
@@ -69,6 +69,7 @@ class Question:
         branch: stated branch, empty for none.
         key: key of the unknown in the brief, for messages.
         place: where a branch would be stated, for messages.
+        conditions: limits of the relation and the test of its regime, which a root must meet.
     """
 
     relation: Relation
@@ -77,6 +78,7 @@ class Question:
     branch: str
     key: str
     place: str
+    conditions: tuple[Condition, ...] = ()
 
 
 def solve(question: Question) -> Solution:
@@ -86,29 +88,29 @@ def solve(question: Question) -> Solution:
         NoRoot: if no value inside the physical bounds satisfies the published form.
         SeveralRoots: if more than one does and no branch is stated.
     """
-    isolation = isolate(question.relation.published, question.unknown)
+    published, unknown = question.relation.published, question.unknown
+    isolation = isolate(published, unknown)
     if isolation is not None:
-        value = evaluate(isolation.solved, question.values)
-        _require_root(question, value)
+        value = _candidate(question, isolation.solved)
+        if value is None:
+            raise _no_root(question)
         return _solution(question, "moves", isolation.moves, isolation.solved, value)
-    form = polynomial_form(question.relation.published, question.unknown)
+    form = polynomial_form(published, unknown)
     if form is not None:
-        roots = [(c, evaluate(c, question.values)) for c in form.candidates]
-        genuine = [(c, v) for c, v in roots if _is_root(question, v)]
-        taken, others = _choose(question, [RootFound(v, False) for _, v in genuine])
-        solved = next(c for c, v in genuine if v is taken.value)
-        solution = _solution(question, "polynomial", form.moves, solved, taken.value, others)
-        return solution
+        values = {solved: _candidate(question, solved) for solved in form.candidates}
+        genuine = {solved: value for solved, value in values.items() if value is not None}
+        taken, others = _choose(question, tuple(genuine.values()))
+        solved = next(solved for solved, value in genuine.items() if value is taken)
+        return _solution(question, "polynomial", form.moves, solved, taken, others)
     taken, others = _choose(question, _roots(question))
-    return _solution(question, "root", (), None, taken.value, others)
+    return _solution(question, "root", (), None, taken, others)
 
 
 def bounds_of(question: Question) -> tuple[Fraction, Fraction]:
     """Return the interval in which the unknown is searched: physical bounds, limits, branch."""
     low, high = question.unknown.definition.low, question.unknown.definition.high
-    conditions = [limit.condition for limit in question.relation.limits]
-    conditions += [b.condition for b in question.relation.branches if b.name == question.branch]
-    for condition in conditions:
+    branches = [b.condition for b in question.relation.branches if b.name == question.branch]
+    for condition in (*question.conditions, *branches):
         low, high = _narrowed(condition, question.unknown, low, high)
     return low, high
 
@@ -133,21 +135,20 @@ def _solution(
         solved=solved,
         residual=residual_of(question.relation, {**question.values, question.unknown: value}),
         branch=_branch_at(question, value),
-        bracket=bounds_of(_on_branch(question, value)) if method == "root" else None,
+        bracket=bounds_of(replace(question, branch=_branch_at(question, value)))
+        if method == "root"
+        else None,
         other_roots=others,
     )
 
 
-def _roots(question: Question) -> Sequence[RootFound]:
+def _roots(question: Question) -> tuple[Ball, ...]:
     difference = question.relation.published.left - question.relation.published.right
     slope = derivative(difference, question.unknown)
     values = question.values
-    physical = Question(
-        question.relation, question.unknown, values, "", question.key, question.place
-    )
-    low, high = bounds_of(physical)
+    low, high = bounds_of(replace(question, branch=""))
     try:
-        return isolate_roots(
+        found = isolate_roots(
             lambda x: evaluate(difference, {**values, question.unknown: x}),
             lambda x: evaluate(slope, {**values, question.unknown: x}),
             low,
@@ -155,52 +156,58 @@ def _roots(question: Question) -> Sequence[RootFound]:
         )
     except TooManyCellsError as problem:
         raise _no_root(question) from problem
+    return tuple(root.value for root in found if _meets_conditions(question, root.value))
 
 
-def _choose(
-    question: Question, roots: Sequence[RootFound]
-) -> tuple[RootFound, tuple[OtherRoot, ...]]:
-    if not roots:
+def _choose(question: Question, roots: tuple[Ball, ...]) -> tuple[Ball, tuple[OtherRoot, ...]]:
+    stated = [b for b in question.relation.branches if b.name == question.branch]
+    stated = [b for b in stated if question.unknown in b.condition.symbols]
+    taken = tuple(r for r in roots if all(_may_hold(b.condition, question, r) for b in stated))
+    if not taken:
         raise _no_root(question)
-    branches = {branch.name: branch for branch in question.relation.branches}
-    if question.branch in branches and question.unknown in branches[question.branch].condition.symbols:
-        inside = [r for r in roots if _meets(branches[question.branch], question.unknown, r.value)]
-        if len(inside) == 1:
-            reason = f"not on the stated branch, {question.branch}"
-            others = tuple(OtherRoot(r.value, reason) for r in roots if r is not inside[0])
-            return inside[0], others
-        if not inside:
-            raise _no_root(question)
-        roots = inside
-    if len(roots) == 1:
-        return roots[0], ()
-    raise SeveralRoots(
-        relation=question.relation.title,
-        unknown=question.key,
-        roots=tuple(_text(root.value) for root in roots),
-        branches=tuple(branches),
-        place=question.place,
-    )
+    if len(taken) > 1:
+        raise SeveralRoots(
+            relation=question.relation.title,
+            unknown=question.key,
+            roots=tuple(_text(root) for root in taken),
+            branches=tuple(branch.name for branch in question.relation.branches),
+            place=question.place,
+        )
+    reason = f"not on the stated branch, {question.branch}"
+    return taken[0], tuple(OtherRoot(r, reason) for r in roots if r is not taken[0])
 
 
 def _branch_at(question: Question, value: Ball) -> str:
     for branch in question.relation.branches:
-        if question.unknown in branch.condition.symbols and _meets(branch, question.unknown, value):
+        mine = question.unknown in branch.condition.symbols
+        if mine and _may_hold(branch.condition, question, value):
             return branch.name
     return ""
 
 
-def _on_branch(question: Question, value: Ball) -> Question:
-    branch = _branch_at(question, value)
-    return Question(
-        question.relation, question.unknown, question.values, branch, question.key, question.place
-    )
+def _meets_conditions(question: Question, value: Ball) -> bool:
+    return all(_may_hold(condition, question, value) for condition in question.conditions)
 
 
-def _meets(branch: Branch, unknown: Symbol, value: Ball) -> bool:
-    low, high = _narrowed(branch.condition, unknown, Fraction(-(10**30)), Fraction(10**30))
-    middle = exact_ball(low).union(exact_ball(high))
-    return bool(middle.overlaps(value))
+def _may_hold(condition: Condition, question: Question, value: Ball) -> bool:
+    """Whether a condition is not proved wrong at a value of the unknown."""
+    values = {**question.values, question.unknown: value}
+    if not set(condition.symbols) <= set(values):
+        return True
+    return compare(condition, values) is not False
+
+
+def compare(condition: Condition, values: Mapping[Symbol, Ball]) -> bool | None:
+    """Return whether a condition holds; ``None`` where the enclosures do not decide it."""
+    left, right = evaluate(condition.left, values), evaluate(condition.right, values)
+    if condition.comparison in (">", ">="):
+        left, right = right, left
+    strict = condition.comparison in ("<", ">")
+    if (left < right) if strict else (left <= right):
+        return True
+    if (left >= right) if strict else (left > right):
+        return False
+    return None
 
 
 def _narrowed(
@@ -215,35 +222,34 @@ def _narrowed(
     return low, min(high, limit)
 
 
-def _is_root(question: Question, value: Ball) -> bool:
+def _candidate(question: Question, solved: Expr) -> Ball | None:
+    """The value of a solved form, if it is a root of the published form within all bounds."""
     definition = question.unknown.definition
+    try:
+        value = evaluate(solved, question.values)
+    except OutsideDomainError:
+        return None
     if not value.is_finite():
-        return False
+        return None
     if value < exact_ball(definition.low) or value > exact_ball(definition.high):
-        return False
+        return None
     if definition.low == 0 and value <= 0:
-        return False
-    low, high = bounds_of(question)
-    if value < exact_ball(low) or value > exact_ball(high):
-        return question.branch != "" and question.relation.branches != ()
+        return None
     values = {**question.values, question.unknown: value}
     left = evaluate(question.relation.published.left, values)
     right = evaluate(question.relation.published.right, values)
-    difference = left - right
     scale = abs(left) + abs(right)
-    return bool(difference.is_finite() and abs(difference) <= scale * _RESIDUAL_SCALE)
-
-
-def _require_root(question: Question, value: Ball) -> None:
-    if not _is_root(question, value):
-        raise _no_root(question)
+    proved = (left - right).is_finite() and abs(left - right) <= scale * _RESIDUAL_SCALE
+    return value if proved and _meets_conditions(question, value) else None
 
 
 def _no_root(question: Question) -> NoRoot:
     low, high = bounds_of(question)
     published = question.relation.published
     inner, asked = published.left, published.right
-    if question.unknown in set(symbols_in(asked)) and question.unknown not in set(symbols_in(inner)):
+    if question.unknown in set(symbols_in(asked)) and question.unknown not in set(
+        symbols_in(inner)
+    ):
         inner, asked = asked, inner
     on_both = question.unknown in set(symbols_in(asked))
     reached = inner - asked if on_both else inner
@@ -260,9 +266,11 @@ def _reached(question: Question, expr: Expr, low: Fraction, high: Fraction) -> s
     """The range of one side over the bounds, by samples in every decade."""
     found = []
     for sample in _samples(low, high):
-        value = evaluate(expr, {**question.values, question.unknown: exact_ball(sample)})
-        if value.is_finite():
-            found.append(value)
+        try:
+            value = evaluate(expr, {**question.values, question.unknown: exact_ball(sample)})
+        except OutsideDomainError:
+            continue
+        found += [value] if value.is_finite() else []
     if not found:
         return "no value at all"
     ordered = sorted(found, key=lambda ball: float(ball.mid()))

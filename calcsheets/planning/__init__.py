@@ -1,0 +1,17 @@
+"""Stage 5, planning: which relation gives which unknown, or exactly what is missing."""
+
+from .advice import closing_inputs
+from .problem import Instance, Place, Problem, RegimeInstance, state_problem
+from .search import Edge, Reach, reach
+
+__all__ = [
+    "Edge",
+    "Instance",
+    "Place",
+    "Problem",
+    "Reach",
+    "RegimeInstance",
+    "closing_inputs",
+    "reach",
+    "state_problem",
+]

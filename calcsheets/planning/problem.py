@@ -1,0 +1,192 @@
+"""A brief as a problem: every relation at every place where the path offers it."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Mapping
+from dataclasses import dataclass
+from functools import cached_property
+
+from ..brief import Brief, Leg, SameAs, Station
+from ..expressions import Symbol
+from ..quantities import Variable
+from ..relations import Library, Regime, Relation, Source, mixture_relations
+from ..relations.roles import DISCHARGE, INLET, OUTLET, SUPPLY, THROUGH
+
+
+@dataclass(frozen=True)
+class Place:
+    """Where a relation is offered, and what its roles mean there.
+
+    Attributes:
+        name: station, process, ``gas`` or ``site``.
+        title: the place in words.
+        roles: place of each role.
+        branch: stated branch, empty for none.
+    """
+
+    name: str
+    title: str
+    roles: Mapping[str, str]
+    branch: str
+
+    def variable(self, symbol: Symbol) -> Variable:
+        """Return the variable that a symbol means here."""
+        home = symbol.definition.home
+        if symbol.role == "" and home != "station":
+            return Variable(symbol.quantity, home)
+        return Variable(symbol.quantity, self.roles.get(symbol.role, symbol.role))
+
+
+@dataclass(frozen=True)
+class Instance:
+    """A relation at a place.
+
+    Attributes:
+        relation: the relation.
+        place: where it is offered.
+    """
+
+    relation: Relation
+    place: Place
+
+    @cached_property
+    def binding(self) -> Mapping[Symbol, Variable]:
+        """The variable of each symbol of the relation."""
+        return {symbol: self.place.variable(symbol) for symbol in self.relation.symbols}
+
+    @cached_property
+    def key(self) -> tuple[str, str]:
+        """A total order on instances."""
+        return (self.relation.name, self.place.name)
+
+    @property
+    def regime_variable(self) -> Variable | None:
+        """The regime on which the relation depends, if it does."""
+        if not self.relation.regime:
+            return None
+        return Variable("regime", self.place.roles[self.relation.regime_role])
+
+
+@dataclass(frozen=True)
+class RegimeInstance:
+    """A regime test at a process."""
+
+    regime: Regime
+    place: Place
+
+    @cached_property
+    def binding(self) -> Mapping[Symbol, Variable]:
+        """The variable of each symbol of the test."""
+        return {symbol: self.place.variable(symbol) for symbol in self.regime.symbols}
+
+    @property
+    def variable(self) -> Variable:
+        """The regime that the test decides."""
+        return Variable("regime", self.place.name)
+
+
+@dataclass(frozen=True)
+class Problem:
+    """Everything that planning knows.
+
+    Attributes:
+        brief: the brief.
+        instances: relations at places, in a total order.
+        regimes: regime tests at processes, by the variable that they decide.
+    """
+
+    brief: Brief
+    instances: tuple[Instance, ...]
+    regimes: Mapping[Variable, RegimeInstance]
+
+    @cached_property
+    def known(self) -> frozenset[Variable]:
+        """Every variable that the brief gives."""
+        return frozenset(given.variable for given in self.brief.given)
+
+    def title(self, variable: Variable) -> str:
+        """Return the place of a variable in words."""
+        return self._titles.get(variable.place, variable.place)
+
+    @cached_property
+    def _titles(self) -> Mapping[str, str]:
+        titles = {"gas": self.brief.gas.title, "site": "site"}
+        titles.update({station.name: station.title for station in self.brief.stations})
+        titles.update({leg.name: leg.title for leg in self.brief.legs})
+        return titles
+
+
+def state_problem(brief: Brief, library: Library) -> Problem:
+    """Return the problem that a brief states, with the relations of a library."""
+    instances = [
+        Instance(relation, place)
+        for place, offers in _places(brief)
+        for relation in library.relations
+        if offers in relation.offered_by
+    ]
+    instances += [
+        Instance(_equality(same, index), _same_place(same))
+        for index, same in enumerate(brief.same_as)
+    ]
+    if brief.gas.components:
+        components = [gas.key for gas, _ in brief.gas.components]
+        place = _gas_place(brief)
+        instances += [
+            Instance(relation, place) for relation in mixture_relations(components, brief.gas.basis)
+        ]
+    tests = [
+        RegimeInstance(regime, place)
+        for place, offers in _places(brief)
+        for regime in library.regimes
+        if offers in regime.offered_by
+    ]
+    return Problem(
+        brief=brief,
+        instances=tuple(sorted(instances, key=lambda instance: instance.key)),
+        regimes={test.variable: test for test in tests},
+    )
+
+
+def _places(brief: Brief) -> Iterator[tuple[Place, str]]:
+    """Every place with the name under which relations are offered there."""
+    yield _gas_place(brief), "gas"
+    yield Place("site", "site", {"": "site"}, ""), "site"
+    for station in brief.stations:
+        yield _station_place(station), station.kind
+    legs = {leg.name: leg for leg in brief.legs}
+    for leg in brief.legs:
+        yield _leg_place(leg, legs), leg.process
+
+
+def _gas_place(brief: Brief) -> Place:
+    return Place("gas", brief.gas.title, {"": "gas"}, "")
+
+
+def _station_place(station: Station) -> Place:
+    return Place(station.name, station.title, {"": station.name}, station.branch)
+
+
+def _leg_place(leg: Leg, legs: Mapping[str, Leg]) -> Place:
+    roles = {"": leg.name, INLET: leg.start, OUTLET: leg.end}
+    if leg.through:
+        through = legs[leg.through]
+        roles |= {THROUGH: through.name, SUPPLY: through.start, DISCHARGE: through.end}
+    return Place(leg.name, leg.title, roles, leg.branch)
+
+
+def _equality(same: SameAs, index: int) -> Relation:
+    """An equality that the brief states, as a relation whose source is the brief."""
+    left = Symbol(same.variable.symbol)
+    right = Symbol(same.other.symbol, same.other.place)
+    return Relation(
+        f"stated_equality_{index + 1}",
+        "Equality stated in the brief",
+        left.equals(right),
+        Source(same.source or "the brief", "", "", "brief"),
+        ("stream",),
+        chapter="brief",
+    )
+
+
+def _same_place(same: SameAs) -> Place:
+    return Place(same.variable.place, same.variable.place, {"": same.variable.place}, "")

@@ -1,0 +1,161 @@
+"""Which relation gives which unknown: the cheapest derivation of everything reachable.
+
+Relations are hyperedges: all but one of their variables lead to the last. Knuth's
+generalisation of the shortest-path search finds for each variable the derivation of least
+cost: roots before all else are avoided, then empirical relations, then steps. Ties fall by
+name, so that the same brief always gives the same plan.
+"""
+
+from __future__ import annotations
+
+import heapq
+from collections import defaultdict
+from collections.abc import Iterable, Iterator, Mapping
+from dataclasses import dataclass
+from functools import lru_cache
+
+from ..expressions import Equation, Symbol, symbols_in
+from ..quantities import Variable
+from .problem import Instance, Problem, RegimeInstance
+
+Cost = tuple[int, int, int]
+_KNOWN: Cost = (0, 0, 0)
+
+
+@dataclass(frozen=True)
+class Edge:
+    """One way to one variable.
+
+    Attributes:
+        target: the variable.
+        inputs: the variables that it needs, in order of appearance.
+        source: the relation or regime test at its place.
+        unknown: symbol of the target in the relation; ``None`` for a regime test.
+        cost: roots, empirical relations and steps of this edge alone.
+    """
+
+    target: Variable
+    inputs: tuple[Variable, ...]
+    source: Instance | RegimeInstance
+    unknown: Symbol | None
+    cost: Cost
+
+
+@dataclass(frozen=True)
+class Reach:
+    """Everything that follows from what is known.
+
+    Attributes:
+        known: what was known.
+        edges: the edge of each reached variable, in the order in which they were reached.
+    """
+
+    known: frozenset[Variable]
+    edges: Mapping[Variable, Edge]
+
+    def __contains__(self, variable: object) -> bool:
+        return variable in self.known or variable in self.edges
+
+    def needed(self, wanted: Iterable[Variable]) -> tuple[Edge, ...]:
+        """Return the edges that the wanted variables need, each after its inputs."""
+        needed: set[Variable] = set()
+        open_ends = [variable for variable in wanted if variable in self.edges]
+        while open_ends:
+            variable = open_ends.pop()
+            if variable not in needed:
+                needed.add(variable)
+                inputs = self.edges[variable].inputs
+                open_ends += [item for item in inputs if item in self.edges]
+        return tuple(edge for variable, edge in self.edges.items() if variable in needed)
+
+
+def reach(
+    problem: Problem,
+    regimes: Mapping[Variable, str],
+    assumed: frozenset[Variable] = frozenset(),
+    extra: Iterable[Variable] = (),
+) -> Reach:
+    """Return everything that follows, by the cheapest derivations.
+
+    Args:
+        problem: the problem.
+        regimes: outcome of each regime that is decided; relations of others are not offered.
+        assumed: regimes whose outcome is assumed and not derived before it is used.
+        extra: variables to take as known besides the given ones.
+    """
+    known = problem.known | frozenset(extra)
+    edges = tuple(_edges(problem, regimes, assumed))
+    waiting = [len(set(edge.inputs) - known) for edge in edges]
+    users: defaultdict[Variable, list[int]] = defaultdict(list)
+    for index, edge in enumerate(edges):
+        for variable in set(edge.inputs) - known:
+            users[variable].append(index)
+    costs: dict[Variable, Cost] = {}
+    heap: list[tuple[Cost, str, tuple[str, str], int]] = []
+
+    def offer(index: int) -> None:
+        edge = edges[index]
+        if edge.target in known or edge.target in costs:
+            return
+        total = _add(edge.cost, *(costs.get(item, _KNOWN) for item in edge.inputs))
+        heapq.heappush(heap, (total, str(edge.target), _key(edge), index))
+
+    for index, count in enumerate(waiting):
+        if count == 0:
+            offer(index)
+    found: dict[Variable, Edge] = {}
+    while heap:
+        cost, _, _, index = heapq.heappop(heap)
+        edge = edges[index]
+        if edge.target in costs:
+            continue
+        costs[edge.target] = cost
+        found[edge.target] = edge
+        for user in users[edge.target]:
+            waiting[user] -= 1
+            if waiting[user] == 0:
+                offer(user)
+    return Reach(known, found)
+
+
+def _add(*costs: Cost) -> Cost:
+    roots, empirical, steps = zip(*costs, strict=True)
+    return sum(roots), sum(empirical), sum(steps)
+
+
+def _key(edge: Edge) -> tuple[str, str]:
+    if isinstance(edge.source, Instance):
+        return edge.source.key
+    return (edge.source.regime.name, edge.source.place.name)
+
+
+def _edges(
+    problem: Problem, regimes: Mapping[Variable, str], assumed: frozenset[Variable]
+) -> Iterator[Edge]:
+    for instance in problem.instances:
+        condition = instance.regime_variable
+        if condition is not None and regimes.get(condition) != instance.relation.regime:
+            continue
+        before = () if condition is None or condition in assumed else (condition,)
+        yield from _relation_edges(instance, before)
+    for test in problem.regimes.values():
+        inputs = tuple(dict.fromkeys(test.binding.values()))
+        yield Edge(test.variable, inputs, test, None, (0, 0, 1))
+
+
+def _relation_edges(instance: Instance, before: tuple[Variable, ...]) -> Iterator[Edge]:
+    variables = list(instance.binding.values())
+    for symbol, target in instance.binding.items():
+        if variables.count(target) > 1:
+            continue
+        inputs = tuple(dict.fromkeys(v for v in variables if v != target))
+        closed = _closes(instance.relation.published, symbol)
+        cost = (0 if closed else 1, int(instance.relation.empirical), 1)
+        yield Edge(target, (*inputs, *before), instance, symbol, cost)
+
+
+@lru_cache(maxsize=4096)
+def _closes(equation: Equation, unknown: Symbol) -> bool:
+    """Whether the unknown occurs once, so that moves isolate it."""
+    found = [*symbols_in(equation.left), *symbols_in(equation.right)]
+    return found.count(unknown) == 1
