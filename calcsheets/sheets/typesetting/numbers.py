@@ -45,7 +45,7 @@ class NumberText:
     def text(self) -> str:
         """One line, such as ``1.298 2 × 10⁶``."""
         mantissa, exponent = self.parts
-        return f"{mantissa} × 10{superscript(exponent)}" if exponent else mantissa  # noqa: RUF001
+        return f"{mantissa} × 10{superscript(exponent)}" if exponent else mantissa
 
     def with_unit(self, unit: str) -> str:
         """Return the number and the printed form of a unit of the closed list."""
@@ -104,7 +104,9 @@ def unit_text(name: str) -> str:
     if name == "1":
         return ""
     water = name.replace("H2O", "H₂O")
-    return re.sub(r"(?<=[A-Za-z])[23]", lambda found: superscript(found[0]), water).replace("*", "·")
+    return re.sub(r"(?<=[A-Za-z])[23]", lambda found: superscript(found[0]), water).replace(
+        "*", "·"
+    )
 
 
 def superscript(digits: str) -> str:

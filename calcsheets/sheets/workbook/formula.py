@@ -1,0 +1,135 @@
+"""Expressions as cell formulas.
+
+Only ``+ - * /``, ``PI``, ``POWER``, ``SQRT``, ``EXP``, ``LN`` and the circular functions of
+the first edition of ISO/IEC 29500 are written, with every operation in brackets, so that no
+engine has to agree with another on precedence. A sign before a power is read differently by spreadsheet
+engines (``-2^2``), so powers are ``POWER`` and a negative is ``0-(x)``.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from fractions import Fraction
+from types import MappingProxyType
+
+from ...errors import DefinitionError
+from ...expressions import (
+    CONSTANTS,
+    Condition,
+    Constant,
+    Expr,
+    Function,
+    Negative,
+    Number,
+    Power,
+    Product,
+    Quotient,
+    Root,
+    Sum,
+    Symbol,
+)
+
+_FUNCTIONS: Mapping[str, str] = MappingProxyType(
+    {
+        "exp": "EXP",
+        "ln": "LN",
+        "sin": "SIN",
+        "cos": "COS",
+        "tan": "TAN",
+        "arcsin": "ASIN",
+        "arccos": "ACOS",
+        "arctan": "ATAN",
+    }
+)
+_EXACT_BELOW = 10**15  # whole numbers up to here are kept by every engine
+_NO_CELLS: Mapping[str, str] = MappingProxyType({})
+
+
+def formula(
+    expr: Expr, cells: Mapping[Symbol, str], constants: Mapping[str, str] = _NO_CELLS
+) -> str:
+    """Return an expression as formula text, without the leading equals sign.
+
+    Args:
+        expr: the expression.
+        cells: cell reference or defined name of each of its symbols, in coherent SI.
+        constants: cell or name of constants by name; the others are written as numbers.
+
+    Raises:
+        DefinitionError: if a symbol has no cell.
+    """
+
+    def text(node: Expr) -> str:
+        match node:
+            case Symbol():
+                return _cell(node, cells)
+            case Constant(name):
+                return constants[name] if name in constants else _constant(name)
+            case Number(value):
+                return _number(value)
+            case Negative(operand):
+                return f"(0-{text(operand)})"
+            case Sum(terms):
+                return f"({text(terms[0])}{''.join(added(term) for term in terms[1:])})"
+            case Product(factors):
+                return f"({'*'.join(text(factor) for factor in factors)})"
+            case Quotient(numerator, denominator):
+                return f"({text(numerator)}/{text(denominator)})"
+            case Power(base, exponent):
+                return f"POWER({text(base)},{text(exponent)})"
+            case Root(radicand):
+                return f"SQRT({text(radicand)})"
+            case Function(name, argument):
+                return f"{_FUNCTIONS[name]}({text(argument)})"
+        raise DefinitionError(f"expression {node!r}", "it is no node of an expression tree")
+
+    def added(term: Expr) -> str:
+        return f"-{text(term.operand)}" if isinstance(term, Negative) else f"+{text(term)}"
+
+    return text(expr)
+
+
+def comparison(
+    condition: Condition, cells: Mapping[Symbol, str], constants: Mapping[str, str] = _NO_CELLS
+) -> str:
+    """Return a condition as formula text that is TRUE where it holds.
+
+    Args:
+        condition: the condition.
+        cells: cell reference or defined name of each of its symbols, in coherent SI.
+        constants: cell or name of constants by name.
+
+    Raises:
+        DefinitionError: if a symbol has no cell.
+    """
+    left = formula(condition.left, cells, constants)
+    right = formula(condition.right, cells, constants)
+    return f"{left}{condition.comparison}{right}"
+
+
+def _cell(symbol: Symbol, cells: Mapping[Symbol, str]) -> str:
+    if symbol not in cells:
+        raise DefinitionError(f"symbol {symbol}", "no cell holds its value")
+    return cells[symbol]
+
+
+def _constant(name: str) -> str:
+    value = CONSTANTS[name].value
+    return "PI()" if value is None else _double(value)
+
+
+def _number(value: Fraction) -> str:
+    if value < 0:
+        return f"(0-{_number(-value)})"
+    if Fraction(_double(value)) == value:
+        return _double(value)
+    if value.numerator < _EXACT_BELOW and value.denominator < _EXACT_BELOW:
+        return f"({value.numerator}/{value.denominator})"
+    return _double(value)
+
+
+def _double(value: Fraction) -> str:
+    """The shortest text of the nearest double, without a needless point."""
+    if value.denominator == 1 and abs(value.numerator) < _EXACT_BELOW:
+        return str(value.numerator)
+    return repr(float(value)).replace("e", "E")
