@@ -145,7 +145,7 @@ class ContradictoryInputs(PlanningError):
         derived: the value that the other inputs lead to, with unit.
         relation: title of the relation that leads to it.
         inputs: keys of the inputs that lead to it.
-        difference: relative difference, derived over given minus one.
+        difference: relative difference of the sides of the relation.
     """
 
     quantity: str
@@ -157,9 +157,9 @@ class ContradictoryInputs(PlanningError):
 
     def __str__(self) -> str:
         return (
-            f"{self.quantity} is given as {self.given}, but {', '.join(self.inputs)} lead to "
-            f"{self.derived} by {self.relation}: {self.difference:+.3%}. "
-            "Remove one of these inputs, or correct it."
+            f"{self.quantity} is {self.given}, but {', '.join(self.inputs)} lead to "
+            f"{self.derived} (relation: {self.relation}); the two sides differ by "
+            f"{abs(self.difference):.3%}. Remove one of these inputs, or correct it."
         )
 
 

@@ -57,16 +57,23 @@ class Reach:
         return variable in self.known or variable in self.edges
 
     def needed(self, wanted: Iterable[Variable]) -> tuple[Edge, ...]:
-        """Return the edges that the wanted variables need, each after its inputs."""
-        needed: set[Variable] = set()
-        open_ends = [variable for variable in wanted if variable in self.edges]
-        while open_ends:
-            variable = open_ends.pop()
-            if variable not in needed:
-                needed.add(variable)
-                inputs = self.edges[variable].inputs
-                open_ends += [item for item in inputs if item in self.edges]
-        return tuple(edge for variable, edge in self.edges.items() if variable in needed)
+        """Return the edges that the wanted variables need, each after its inputs.
+
+        The order is that of a reader: the derivation of the first result first.
+        """
+        ordered: dict[Variable, Edge] = {}
+        stack = [(variable, False) for variable in reversed(list(wanted))]
+        while stack:
+            variable, inputs_done = stack.pop()
+            if variable in ordered or variable not in self.edges:
+                continue
+            edge = self.edges[variable]
+            if inputs_done:
+                ordered[variable] = edge
+            else:
+                stack.append((variable, True))
+                stack += [(item, False) for item in reversed(edge.inputs)]
+        return tuple(ordered.values())
 
 
 def reach(

@@ -17,7 +17,6 @@ from ..expressions import (
     Condition,
     Equation,
     Expr,
-    Symbol,
     expression_from_mathml,
     expression_to_mathml,
 )
@@ -38,8 +37,6 @@ def digest_of(record: Record) -> str:
 
 def to_plain(value: Any) -> Any:
     """Return a value of the record as JSON would hold it; expressions as Content MathML."""
-    if isinstance(value, Symbol):
-        return str(value)
     if isinstance(value, Expr | Equation | Condition):
         return expression_to_mathml(value)
     if is_dataclass(value):
@@ -74,9 +71,6 @@ def _from_plain(kind: Any, value: Any) -> Any:
         return tuple(_from_plain(item, entry) for entry in value)
     if origin in (types.UnionType, typing.Union):
         return _from_union(typing.get_args(kind), value)
-    if kind is Symbol:
-        quantity, _, role = value.partition(".")
-        return Symbol(quantity, role)
     if isinstance(kind, type) and issubclass(kind, Expr | Equation | Condition):
         statement = expression_from_mathml(value)
         if not isinstance(statement, kind):

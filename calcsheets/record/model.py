@@ -23,7 +23,9 @@ class SourceRecord:
 
     def __str__(self) -> str:
         text = ", ".join(part for part in (self.document, self.edition, self.clause) if part)
-        return f"{text} (from memory: confirm in the source)" if self.known == "from memory" else text
+        return (
+            f"{text} (from memory: confirm in the source)" if self.known == "from memory" else text
+        )
 
 
 @dataclass(frozen=True)

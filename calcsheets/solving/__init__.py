@@ -10,7 +10,8 @@ from .balls import (
     working_precision,
 )
 from .moves import ACTIONS, Isolation, Move, isolate, occurrences
-from .solve import OtherRoot, Question, Solution, residual_of, solve
+from .run import Outcome, RegimeOutcome, StepOutcome, solve_problem
+from .solve import OtherRoot, Question, Solution, compare, residual_of, solve
 
 __all__ = [
     "ACTIONS",
@@ -19,8 +20,12 @@ __all__ = [
     "Isolation",
     "Move",
     "OtherRoot",
+    "Outcome",
     "Question",
+    "RegimeOutcome",
     "Solution",
+    "StepOutcome",
+    "compare",
     "decimal_bounds",
     "evaluate",
     "exact_ball",
@@ -29,5 +34,6 @@ __all__ = [
     "occurrences",
     "residual_of",
     "solve",
+    "solve_problem",
     "working_precision",
 ]

@@ -1,0 +1,291 @@
+"""A whole problem solved: regimes decided on the way, then every step that is needed."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator, Mapping
+from dataclasses import dataclass, field
+from itertools import product
+
+from ..errors import AmbiguousRegime, NotEnoughInputs, SolvingError
+from ..expressions import Condition
+from ..planning import (
+    Edge,
+    Instance,
+    Problem,
+    Reach,
+    RegimeInstance,
+    closing_inputs,
+    reach,
+)
+from ..quantities import Variable, catalogue
+from .balls import Ball, OutsideDomainError, evaluate, exact_ball, working_precision
+from .solve import Question, Solution, compare, solve
+
+_MOST_ASSUMED = 4
+_OPPOSITE = {"<=": ">", "<": ">=", ">=": "<", ">": "<="}
+
+
+@dataclass(frozen=True)
+class RegimeOutcome:
+    """A regime test with the balls of its sides."""
+
+    left: Ball
+    right: Ball
+    regime: str
+    assumed: bool
+
+
+@dataclass(frozen=True)
+class StepOutcome:
+    """What one edge of the plan came to.
+
+    Attributes:
+        edge: the edge.
+        solution: of a relation; ``None`` for a regime test.
+        regime: of a regime test; ``None`` for a relation.
+    """
+
+    edge: Edge
+    solution: Solution | None
+    regime: RegimeOutcome | None
+
+
+@dataclass(frozen=True)
+class Outcome:
+    """A solved problem.
+
+    Attributes:
+        problem: the problem.
+        steps: in the order of the plan.
+        values: ball of every known or solved variable.
+        regimes: every regime that was decided.
+        reached: everything that the plan could reach.
+    """
+
+    problem: Problem
+    steps: tuple[StepOutcome, ...]
+    values: Mapping[Variable, Ball]
+    regimes: Mapping[Variable, str]
+    reached: Reach
+
+
+@dataclass
+class _Run:
+    """One attempt, with the regimes that it takes for granted."""
+
+    problem: Problem
+    assumed: Mapping[Variable, str] = field(default_factory=dict)
+    values: dict[Variable, Ball] = field(default_factory=dict)
+    regimes: dict[Variable, str] = field(default_factory=dict)
+    solved: dict[Variable, StepOutcome] = field(default_factory=dict)
+
+    def __post_init__(self) -> None:
+        self.regimes.update(self.assumed)
+        for given in self.problem.brief.given:
+            unit = given.measured.unit
+            self.values[given.variable] = exact_ball(given.measured.rational, unit.pi_power)
+
+    def reach(self) -> Reach:
+        """Search, decide the regimes that can be decided, and search again."""
+        tried: set[Variable] = set()
+        while True:
+            reached = reach(self.problem, self.regimes, frozenset(self.assumed))
+            undecided = [
+                variable
+                for variable in reached.edges
+                if variable in self.problem.regimes
+                and variable not in self.regimes
+                and variable not in tried
+            ]
+            if not undecided:
+                return reached
+            for variable in undecided:
+                tried.add(variable)
+                self._decide(reached, variable)
+
+    def _decide(self, reached: Reach, variable: Variable) -> None:
+        try:
+            self.execute(reached.needed([variable]))
+        except SolvingError:
+            return  # a regime that nothing needs must not stop the calculation
+
+    def execute(self, edges: tuple[Edge, ...]) -> None:
+        """Solve edges that are not solved yet, in order."""
+        for edge in edges:
+            if edge.target in self.solved:
+                continue
+            if isinstance(edge.source, RegimeInstance):
+                outcome = StepOutcome(edge, None, self._test(edge.source))
+            else:
+                outcome = StepOutcome(edge, self._solve(edge, edge.source), None)
+            self.solved[edge.target] = outcome
+
+    def _test(self, source: RegimeInstance) -> RegimeOutcome:
+        condition = source.regime.condition
+        values = {symbol: self.values[variable] for symbol, variable in source.binding.items()}
+        holds = compare(condition, values)
+        if holds is None:  # the enclosures overlap: both sides are equal as far as is known
+            holds = condition.comparison in ("<=", ">=")
+        regime = source.regime.when_true if holds else source.regime.when_false
+        self.regimes.setdefault(source.variable, regime)
+        return RegimeOutcome(
+            left=evaluate(condition.left, values),
+            right=evaluate(condition.right, values),
+            regime=regime,
+            assumed=source.variable in self.assumed,
+        )
+
+    def _solve(self, edge: Edge, source: Instance) -> Solution:
+        unknown = edge.unknown
+        if unknown is None:
+            raise NotEnoughInputs(str(edge.target), "", ())
+        conditions = tuple(self._conditions(source))
+        symbols = {*source.relation.symbols, *(s for c in conditions for s in c.symbols)}
+        bound = {symbol: source.place.variable(symbol) for symbol in symbols}
+        values = {
+            symbol: self.values[variable]
+            for symbol, variable in bound.items()
+            if variable in self.values and variable != edge.target
+        }
+        branch = self._branch(edge.target.place) or source.place.branch
+        place = f"the place {edge.target.place}"
+        solution = solve(
+            Question(source.relation, unknown, values, branch, str(edge.target), place, conditions)
+        )
+        self.values[edge.target] = solution.value
+        return solution
+
+    def _conditions(self, source: Instance) -> Iterator[Condition]:
+        """Limits of a relation, and the test of the regime in which it holds."""
+        for limit in source.relation.limits:
+            yield limit.condition
+        variable = source.regime_variable
+        if variable is not None and not source.relation.regime_role:
+            regime = self.problem.regimes[variable].regime
+            test = regime.condition
+            if source.relation.regime == regime.when_true:
+                yield test
+            else:
+                yield Condition(test.left, _OPPOSITE[test.comparison], test.right)
+
+    def _branch(self, place: str) -> str:
+        brief = self.problem.brief
+        return next((p.branch for p in (*brief.stations, *brief.legs) if p.name == place), "")
+
+    def finish(self, reached: Reach) -> Outcome:
+        """Solve everything that the wanted results need."""
+        wanted = [item.variable for item in self.problem.brief.wanted]
+        tests = [variable for variable in self.assumed if variable in reached.edges]
+        edges = reached.needed([*wanted, *tests])
+        self.execute(edges)
+        return Outcome(
+            self.problem,
+            tuple(self.solved[edge.target] for edge in edges),
+            dict(self.values),
+            dict(self.regimes),
+            reached,
+        )
+
+
+def solve_problem(problem: Problem) -> Outcome:
+    """Solve a problem for everything that its brief wants.
+
+    Regimes follow from their tests where the inputs decide them. Where a regime depends on
+    the answer, each is tried and kept only if its own test agrees afterwards.
+
+    Raises:
+        NotEnoughInputs: if a wanted quantity does not follow.
+        AmbiguousRegime: if no regime or more than one agrees with its own test.
+        SolvingError: if a step has no root, or several and no stated branch.
+    """
+    with working_precision():
+        stated = _stated_regimes(problem)
+        run = _Run(problem, stated)
+        reached = run.reach()
+        missing = _missing(problem, reached)
+        if not missing:
+            outcome = run.finish(reached)
+            _require_agreement(outcome, stated)
+            return outcome
+        return _by_assumption(problem, run.regimes, stated, missing[0])
+
+
+def _stated_regimes(problem: Problem) -> dict[Variable, str]:
+    return {Variable("regime", leg.name): leg.regime for leg in problem.brief.legs if leg.regime}
+
+
+def _missing(problem: Problem, reached: Reach) -> list[Variable]:
+    return [w.variable for w in problem.brief.wanted if w.variable not in reached]
+
+
+def _require_agreement(outcome: Outcome, stated: Mapping[Variable, str]) -> None:
+    for variable, regime in stated.items():
+        step = next((s for s in outcome.steps if s.edge.target == variable), None)
+        if step is not None and step.regime is not None and step.regime.regime != regime:
+            raise AmbiguousRegime(variable.place, (), (regime,))
+
+
+def _by_assumption(
+    problem: Problem,
+    regimes: Mapping[Variable, str],
+    stated: Mapping[Variable, str],
+    missing: Variable,
+) -> Outcome:
+    """Try each combination of the open regimes, and keep those whose tests agree."""
+    open_tests = [variable for variable in sorted(problem.regimes) if variable not in regimes]
+    open_tests = open_tests[:_MOST_ASSUMED]
+    choices = [
+        (problem.regimes[v].regime.when_true, problem.regimes[v].regime.when_false)
+        for v in open_tests
+    ]
+    reachable = False
+    agreeing: list[Outcome] = []
+    for combination in product(*choices) if open_tests else ():
+        assumed = {**stated, **dict(zip(open_tests, combination, strict=True))}
+        run = _Run(problem, assumed)
+        reached = run.reach()
+        if _missing(problem, reached):
+            continue
+        reachable = True
+        try:
+            outcome = run.finish(reached)
+        except (SolvingError, OutsideDomainError):
+            continue
+        if all(step.regime is None or _agrees(step, assumed) for step in outcome.steps):
+            agreeing.append(outcome)
+    distinct = _distinct(agreeing, open_tests)
+    if len(distinct) == 1:
+        return distinct[0]
+    if reachable:
+        place = open_tests[0].place
+        found = tuple(outcome.regimes[open_tests[0]] for outcome in distinct)
+        raise AmbiguousRegime(place, found, choices[0])
+    raise _not_enough(problem, regimes, missing)
+
+
+def _agrees(step: StepOutcome, assumed: Mapping[Variable, str]) -> bool:
+    regime = step.regime
+    return regime is None or assumed.get(step.edge.target, regime.regime) == regime.regime
+
+
+def _distinct(outcomes: list[Outcome], tests: list[Variable]) -> list[Outcome]:
+    """Outcomes that differ only in a regime that no step depends on are one outcome."""
+    kept: dict[tuple[str, ...], Outcome] = {}
+    for outcome in outcomes:
+        used = {step.edge.source.regime_variable for step in outcome.steps
+                if isinstance(step.edge.source, Instance)}  # fmt: skip
+        key = tuple(outcome.regimes[test] if test in used else "" for test in tests)
+        kept.setdefault(key, outcome)
+    return list(kept.values())
+
+
+def _not_enough(
+    problem: Problem, regimes: Mapping[Variable, str], missing: Variable
+) -> NotEnoughInputs:
+    quantity = catalogue()[missing.symbol]
+    closing = closing_inputs(problem, regimes, missing)
+    return NotEnoughInputs(
+        wanted=str(missing),
+        title=f"{quantity.title}, {problem.title(missing)}",
+        closing=tuple(tuple(str(variable) for variable in extra) for extra in closing),
+    )
