@@ -2,8 +2,8 @@
 
 Only ``+ - * /``, ``PI``, ``POWER``, ``SQRT``, ``EXP``, ``LN`` and the circular functions of
 the first edition of ISO/IEC 29500 are written, with every operation in brackets, so that no
-engine has to agree with another on precedence. A sign before a power is read differently by spreadsheet
-engines (``-2^2``), so powers are ``POWER`` and a negative is ``0-(x)``.
+engine has to agree with another on precedence. Engines and people differ on a sign before a
+power (``-2^2``), so powers are ``POWER`` and a negative is ``0-(x)``.
 """
 
 from __future__ import annotations

@@ -1,0 +1,183 @@
+"""A cell formula means what the expression means, to a spreadsheet engine too."""
+
+from __future__ import annotations
+
+import random
+import re
+from fractions import Fraction
+
+import ironcalc
+import pytest
+
+from calcsheets.errors import DefinitionError
+from calcsheets.expressions import (
+    CONSTANTS,
+    Constant,
+    Expr,
+    Function,
+    Number,
+    Power,
+    Product,
+    Sum,
+    Symbol,
+    number,
+    symbols,
+    symbols_in,
+)
+from calcsheets.relations import load_library
+from calcsheets.sheets.workbook.formula import comparison, formula
+from calcsheets.solving import evaluate, exact_ball, isolate, midpoint, working_precision
+
+a, b, c = symbols("p T rho")
+CELLS = {a: "A1", b: "B1", c: "C1"}
+ALLOWED = {"PI", "POWER", "SQRT", "EXP", "LN", "SIN", "COS", "TAN", "ASIN", "ACOS", "ATAN"}
+LIBRARY = load_library()
+
+
+def all_expressions() -> list[Expr]:
+    """Both sides of every relation, every solved form, and both sides of every test."""
+    found: list[Expr] = []
+    for relation in LIBRARY.relations:
+        found += [relation.published.left, relation.published.right]
+        for unknown in relation.symbols:
+            isolation = isolate(relation.published, unknown)
+            found += [isolation.solved] if isolation else []
+    for regime in LIBRARY.regimes:
+        found += [regime.condition.left, regime.condition.right]
+    return found
+
+
+def calculated(texts: list[str], numbers: dict[str, float]) -> list[object]:
+    """What the spreadsheet engine makes of formulas in column D, with numbers in row 1."""
+    model = ironcalc.create("test", "en", "UTC", "en")
+    for reference, value in numbers.items():
+        model.update_cell_with_number(0, 1, ironcalc.column_number_from_name(reference[:-1]), value)
+    for row, text in enumerate(texts, start=2):
+        model.set_user_input(0, row, 1, f"={text}")
+    model.evaluate()
+    return [model.get_cell_value(0, row, 1) for row in range(2, len(texts) + 2)]
+
+
+def of_one(expr: Expr, values: tuple[float, ...] = (3.0, 2.0, 5.0)) -> object:
+    return calculated([formula(expr, CELLS)], dict(zip(CELLS.values(), values, strict=True)))[0]
+
+
+class TestAgainstASpreadsheetEngine:
+    @pytest.mark.parametrize("seed", range(3))
+    def test_every_expression_of_the_library_has_the_value_of_its_formula(self, seed):
+        chance = random.Random(seed)
+        expressions = all_expressions()
+        quantities = sorted({s for e in expressions for s in _symbols(e)}, key=str)
+        values = {symbol: _value(symbol, chance) for symbol in quantities}
+        cells = {
+            symbol: f"{ironcalc.column_name_from_number(i)}1"
+            for i, symbol in enumerate(quantities, start=1)
+        }
+        found = calculated(
+            [formula(expr, cells) for expr in expressions],
+            {cells[symbol]: value for symbol, value in values.items()},
+        )
+        compared = 0
+        with working_precision():
+            balls = {symbol: exact_ball(Fraction(value)) for symbol, value in values.items()}
+            for expr, engine in zip(expressions, found, strict=True):
+                try:
+                    ball = evaluate(expr, balls)
+                except ArithmeticError:
+                    continue
+                exact = midpoint(ball)
+                if not 1e-12 < abs(exact) < 1e12:
+                    continue  # an exponential so large magnifies the rounding of its argument
+                compared += 1
+                assert engine == pytest.approx(exact, rel=1e-13), formula(expr, cells)
+        assert compared > 0.9 * len(expressions)
+
+    @pytest.mark.parametrize(
+        ("expr", "value"),
+        [
+            ((a + b) * c, 25),
+            (a - (b - c), 6),
+            (Power(Power(a, b), number("2")), 81),
+            (Power(a, Power(b, number("2"))), 81),
+            (-(a + b), -5),
+            (a / (b / c), 7.5),
+            ((a / b) / c, 0.3),
+            ((-a) ** 2, 9),
+            (-(a**2), -9),
+            (number("-2") ** 2, 4),
+            (Sum((number("-2"), a)), 1),
+            (Product((a, number("-2"))), -6),
+            (a - (-b), 5),
+            (a ** (-b), 1 / 9),
+            (Number(Fraction(1, 3)) * a, 1),
+            (1 + Number(Fraction(1, 3)) ** 2, 10 / 9),
+        ],
+    )
+    def test_brackets_and_signs_survive(self, expr, value):
+        assert of_one(expr) == pytest.approx(value, rel=1e-15)
+
+    def test_the_functions_are_those_of_the_engine(self):
+        for name, value in (("arcsin", 0.5), ("arccos", 0.5), ("arctan", 2.0), ("tan", 0.5)):
+            there_and_back = Function(_INVERSE[name], Function(name, a))
+            assert of_one(there_and_back, (value, 1.0, 1.0)) == pytest.approx(value, rel=1e-14)
+
+    def test_a_comparison_is_true_where_the_condition_holds(self):
+        row = {"A1": 3.0, "B1": 2.0, "C1": 5.0}
+        conditions = [a.at_most(3), a.below(3), (a + b).at_least(c), (a / b).above(c)]
+        found = calculated([comparison(item, CELLS) for item in conditions], row)
+        assert found == [True, False, True, False]
+
+
+class TestText:
+    @pytest.mark.parametrize(
+        ("expr", "text"),
+        [
+            (a * b**2, "(A1*POWER(B1,2))"),
+            (-a, "(0-A1)"),
+            (1 + (a - 1) / 2 * b**2, "(1+(((A1-1)/2)*POWER(B1,2)))"),
+            (number("0.62") * a, "(0.62*A1)"),
+            (Number(Fraction(1, 3)), "(1/3)"),
+            (number("0.00001"), "1E-05"),
+            (number("-2"), "(0-2)"),
+            (Constant("pi") / 4, "(PI()/4)"),
+            (Constant("R_u"), "8.31446261815324"),
+            (Constant("p_N"), "101325"),
+        ],
+    )
+    def test_a_formula_is_written_in_full_brackets(self, expr, text):
+        assert formula(expr, CELLS) == text
+
+    def test_a_constant_may_stand_in_a_cell_of_its_own(self):
+        assert formula(Constant("R_u") / a, CELLS, {"R_u": "Z9"}) == "(Z9/A1)"
+        assert comparison(a.at_most(Constant("p_N")), CELLS, {"p_N": "Z8"}) == "A1<=Z8"
+
+    def test_every_constant_is_written_as_its_nearest_double(self):
+        for name, constant in CONSTANTS.items():
+            if constant.value is not None:
+                assert float(formula(Constant(name), {})) == float(constant.value)
+
+    def test_only_functions_of_the_first_edition_of_the_standard_are_used(self):
+        cells = {s: "A1" for e in all_expressions() for s in _symbols(e)}
+        for expr in all_expressions():
+            text = formula(expr, cells)
+            assert set(re.findall(r"([A-Z]+)\(", text)) <= ALLOWED
+            assert re.fullmatch(r"[A-Z0-9+\-*/(),.]+", text)
+            assert not re.search(r"(^|[(,*/+-])-", text), "no sign stands before an operand"
+
+    def test_a_symbol_without_a_cell_is_named(self):
+        with pytest.raises(DefinitionError, match="symbol T: no cell holds its value"):
+            formula(a + b, {a: "A1"})
+
+
+_INVERSE = {"arcsin": "sin", "arccos": "cos", "arctan": "tan", "tan": "arctan"}
+
+
+def _symbols(expr: Expr) -> set[Symbol]:
+    return set(symbols_in(expr))
+
+
+def _value(symbol: Symbol, chance: random.Random) -> float:
+    """A positive value well inside the bounds, so that no difference of neighbours is taken."""
+    ranges = {"gamma": (1.2, 1.6), "n": (1.1, 1.5), "mu": (0.3, 1.2), "M": (1.1, 4.0)}
+    low, high = ranges.get(symbol.quantity, (0.5, 9.0))
+    return chance.uniform(low, high)
