@@ -431,10 +431,10 @@ class TestDrawings:
         assert flat.depth < 0.5, "a letter without descender stands on the baseline"
 
     def test_the_settings_of_the_library_are_left_as_they_were(self):
-        before = config.svg2, config.precision
+        before = config.svg2, config.precision, config.minsizefraction
         draw.cache_clear()
         draw(presentation_mathml(a))
-        assert (config.svg2, config.precision) == before
+        assert (config.svg2, config.precision, config.minsizefraction) == before
 
     def test_text_that_is_not_mathml_is_refused(self):
         with pytest.raises(DefinitionError, match="MathML: it is not well formed"):

@@ -18,6 +18,7 @@ from ...errors import DefinitionError
 # drawn at that size and scaled: superscripts of superscripts stay in proportion.
 _DRAWN_AT = 24.0
 _MARGIN = 0.6
+_SMALLEST = 0.55  # of the base size: fractions in fractions must stay readable on paper
 _DRAWING = Lock()
 
 
@@ -72,7 +73,7 @@ def draw(mathml: str, size: float = 10.0) -> Drawing:
 @contextmanager
 def _settings() -> Iterator[None]:
     """Hold the library's settings, which are one for the whole process, while we draw."""
-    wanted = {"svg2": False, "precision": 2}
+    wanted = {"svg2": False, "precision": 2, "minsizefraction": _SMALLEST}
     with _DRAWING:
         found = {name: getattr(config, name) for name in wanted}
         try:
