@@ -135,6 +135,21 @@ class RootRecord:
 
 
 @dataclass(frozen=True)
+class HalvingRecord:
+    """One row of the bisection that leads to a root.
+
+    Attributes:
+        low: lower end of the interval.
+        high: upper end.
+        residual: difference of both sides at the middle, over the sum of their magnitudes.
+    """
+
+    low: float
+    high: float
+    residual: float
+
+
+@dataclass(frozen=True)
 class AlternativeRecord:
     """What gives the same quantity in the other regime, for a workbook that stays alive.
 
@@ -199,6 +214,7 @@ class StepRecord:
         branch: branch on which the value lies, empty for none.
         bracket: interval in which the root is the only one, empty for closed forms.
         other_roots: roots not taken.
+        halvings: the course of a bisection in the bracket, empty for closed forms.
         regime_key: variable of the regime on which the relation depends, empty for none.
         regime: the regime in which the relation holds, empty for none.
         alternatives: the same quantity in other regimes.
@@ -225,6 +241,7 @@ class StepRecord:
     branch: str
     bracket: tuple[float, ...]
     other_roots: tuple[RootRecord, ...]
+    halvings: tuple[HalvingRecord, ...]
     regime_key: str
     regime: str
     alternatives: tuple[AlternativeRecord, ...]

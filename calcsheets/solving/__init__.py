@@ -9,14 +9,17 @@ from .balls import (
     midpoint,
     working_precision,
 )
+from .bisection import HALVINGS, Halving
 from .moves import ACTIONS, Isolation, Move, isolate, occurrences
 from .run import Outcome, RegimeOutcome, StepOutcome, solve_problem
 from .solve import OtherRoot, Question, Solution, compare, residual_of, solve
 
 __all__ = [
     "ACTIONS",
+    "HALVINGS",
     "PRECISION",
     "Ball",
+    "Halving",
     "Isolation",
     "Move",
     "OtherRoot",

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Callable, Mapping
 from dataclasses import dataclass, replace
 from fractions import Fraction
 
@@ -11,12 +11,14 @@ from flint import arb
 from ..errors import NoRoot, SeveralRoots
 from ..expressions import Condition, Expr, Number, Symbol, derivative, symbols_in
 from ..relations import Relation
-from .balls import Ball, OutsideDomainError, evaluate, exact_ball
+from .balls import Ball, OutsideDomainError, evaluate, exact_ball, midpoint
+from .bisection import Halving, halvings
 from .moves import Move, isolate
 from .polynomials import polynomial_form
 from .roots import TooManyCellsError, isolate_roots
 
 _SAMPLES = 64
+_TINY = Fraction(1, 10**15)
 _RESIDUAL_SCALE = arb(2) ** -60
 
 
@@ -46,6 +48,7 @@ class Solution:
         branch: name of the branch on which the value lies, empty where there is one root.
         bracket: interval in which the root is the only one; ``None`` for closed forms.
         other_roots: roots that were not taken.
+        halvings: the course of a bisection in the bracket, empty for closed forms.
     """
 
     value: Ball
@@ -56,6 +59,7 @@ class Solution:
     branch: str
     bracket: tuple[Fraction, Fraction] | None
     other_roots: tuple[OtherRoot, ...]
+    halvings: tuple[Halving, ...]
 
 
 @dataclass(frozen=True)
@@ -128,6 +132,7 @@ def _solution(
     value: Ball,
     others: tuple[OtherRoot, ...] = (),
 ) -> Solution:
+    bracket = _bracket(question, value, others) if method == "root" else None
     return Solution(
         value=value,
         method=method,
@@ -139,7 +144,53 @@ def _solution(
         if method == "root"
         else None,
         other_roots=others,
+        halvings=() if bracket is None else halvings(_residual_function(question), bracket),
     )
+
+
+def _residual_function(question: Question) -> Callable[[Ball], Ball]:
+    """The difference of both sides over the sum of their magnitudes, as a function of the unknown."""
+    published = question.relation.published
+
+    def residual(at: Ball) -> Ball:
+        values = {**question.values, question.unknown: at}
+        left, right = evaluate(published.left, values), evaluate(published.right, values)
+        return (left - right) / (abs(left) + abs(right))
+
+    return residual
+
+
+def _bracket(
+    question: Question, value: Ball, others: tuple[OtherRoot, ...]
+) -> tuple[Fraction, Fraction]:
+    """An interval around one root in which the relation is defined and no other root lies.
+
+    It is kept as wide as the branch allows, so that a workbook can bisect in it after its
+    inputs have changed.
+    """
+    low, high = bounds_of(replace(question, branch=_branch_at(question, value)))
+    low = low if low != 0 else high * _TINY
+    centre = Fraction(midpoint(value))
+    for other in others:
+        between = (Fraction(midpoint(other.value)) + centre) / 2
+        low, high = (max(low, between), high) if between < centre else (low, min(high, between))
+    difference = question.relation.published.left - question.relation.published.right
+    ends = []
+    for end in (low, high):
+        if not _defined(question, difference, end):
+            while not _defined(question, difference, end):
+                end += (centre - end) / 8
+            end = (end + centre) / 2  # room for changed inputs
+        ends.append(end)
+    return ends[0], ends[1]
+
+
+def _defined(question: Question, expr: Expr, at: Fraction) -> bool:
+    try:
+        value = evaluate(expr, {**question.values, question.unknown: exact_ball(at)})
+    except OutsideDomainError:
+        return False
+    return bool(value.is_finite())
 
 
 def _roots(question: Question) -> tuple[Ball, ...]:

@@ -1,1 +1,5 @@
-"""The workbook of a record."""
+"""The live workbook."""
+
+from .book import workbook_bytes
+
+__all__ = ["workbook_bytes"]

@@ -107,6 +107,11 @@ def comparison(
     return f"{left}{condition.comparison}{right}"
 
 
+def exact_number(value: Fraction) -> str:
+    """Return an exact number as formula text: digits, or a quotient of whole numbers."""
+    return _number(value)
+
+
 def _cell(symbol: Symbol, cells: Mapping[Symbol, str]) -> str:
     if symbol not in cells:
         raise DefinitionError(f"symbol {symbol}", "no cell holds its value")

@@ -1,0 +1,68 @@
+"""The workbook of a record: every number a live formula with its value stored."""
+
+from __future__ import annotations
+
+from datetime import datetime
+from io import BytesIO
+from typing import Any
+
+from ...record import Record
+from .calculation import write_calculation
+from .cells import CALCULATION, INPUTS, RESULTS, ROOTS, place_cells
+from .inputs import write_inputs
+from .page import Page, make_styles
+from .results import write_results
+from .roots import root_cells, root_steps, write_roots
+from .texts import write_assumptions, write_cover, write_references
+
+_OPTIONS = {
+    "in_memory": True,
+    "strings_to_formulas": False,
+    "strings_to_numbers": False,
+    "strings_to_urls": False,
+}
+
+
+def workbook_bytes(record: Record, paper: str = "A4") -> bytes:
+    """Return the workbook of a record, the same bytes for the same record.
+
+    Args:
+        record: the record.
+        paper: ``A4`` or ``letter``, for printing.
+    """
+    import xlsxwriter
+
+    buffer = BytesIO()
+    with xlsxwriter.Workbook(buffer, _OPTIONS) as book:
+        _set_properties(book, record)
+        styles = make_styles(book)
+        names = ["Cover", RESULTS, INPUTS, "Assumptions", CALCULATION]
+        names += [ROOTS] if root_steps(record) else []
+        names += ["References"]
+        pages = {name: Page(book, styles, name, record, paper) for name in names}
+        cells = place_cells(record)
+        write_cover(pages["Cover"], record)
+        write_results(pages[RESULTS], record, cells)
+        write_inputs(pages[INPUTS], record, book)
+        write_assumptions(pages["Assumptions"], record)
+        write_calculation(pages[CALCULATION], record, cells, root_cells(record))
+        if ROOTS in pages:
+            write_roots(pages[ROOTS], record, cells)
+        write_references(pages["References"], record)
+    return buffer.getvalue()
+
+
+def _set_properties(book: Any, record: Record) -> None:
+    book.set_size(2400, 1400)
+    book.set_calc_mode("auto")
+    book.set_properties(
+        {
+            "title": record.field("title"),
+            "subject": record.field("purpose"),
+            "author": record.field("originator"),
+            "company": record.field("firm"),
+            "keywords": f"{record.field('number')} rev {record.field('revision')}",
+            "comments": f"Record SHA-256 {record.digest}",
+            "created": datetime.fromisoformat(f"{record.field('date')}T00:00:00"),
+        }
+    )

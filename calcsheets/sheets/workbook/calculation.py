@@ -1,0 +1,134 @@
+"""The sheet of the calculation: one row for each step, each a live formula."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+
+from ...expressions import Condition, Equation, Symbol
+from ...record import LimitRecord, Record, StepRecord
+from ..typesetting import plain_text, symbol_text, unit_text
+from .cells import CALCULATION, FIRST_ROW, STEP_VALUE, Cells, reference
+from .formula import comparison, formula
+from .page import Column, Page
+
+_COLUMNS = (
+    Column("No.", 5),
+    Column("Quantity", 26),
+    Column("Symbol", 8),
+    Column("Place", 22),
+    Column("Value", 16),
+    Column("SI unit", 11),
+    Column("Relation", 26),
+    Column("As published", 42),
+    Column("Solved for the quantity", 42),
+    Column("Source", 34),
+    Column("Limits", 26),
+    Column("Within limits", 9),
+    Column("Value as issued", 16),
+    Column("Changed by", 11),
+)
+CHANGE = 13
+ROOT_TEXT = "root on the sheet Roots"
+
+
+def write_calculation(page: Page, record: Record, cells: Cells, roots: Mapping[int, str]) -> None:
+    """Write one row for each step.
+
+    Args:
+        page: the sheet.
+        record: the record.
+        cells: where every quantity stands.
+        roots: cell of the converged root, by number of its step.
+    """
+    page.table(
+        "Calculation",
+        "Every value is a formula of the cells it names. #N/A: the regime has changed to one "
+        "for which this sheet holds no relation; prepare the brief again.",
+        _COLUMNS,
+    )
+    for index, step in enumerate(record.steps):
+        _row(page, FIRST_ROW + index, record, step, cells, roots)
+
+
+def _row(  # noqa: PLR0913 - what a row is made of
+    page: Page,
+    row: int,
+    record: Record,
+    step: StepRecord,
+    cells: Cells,
+    roots: Mapping[int, str],
+) -> None:
+    relation = record.relation(step.relation)
+    page.number(row, 0, step.number)
+    page.text(row, 1, "regime" if step.test else step.title)
+    page.text(row, 2, symbol_text(step.symbol))
+    page.text(row, 3, step.place)
+    page.text(row, 5, unit_text(step.unit) if step.unit else "")
+    page.text(row, 6, relation.title)
+    page.text(row, 7, plain_text(relation.published))
+    page.text(row, 8, _solved_text(step))
+    page.text(row, 9, str(relation.source))
+    page.text(row, 10, "; ".join(plain_text(limit.condition) for limit in step.limits))
+    value = reference(CALCULATION, row, STEP_VALUE)
+    issued = reference(CALCULATION, row, 12)
+    if step.test is not None:
+        page.formula(
+            row, STEP_VALUE, _test_formula(step, cells), step.test.outcome, page.styles.strong
+        )
+        page.text(row, 11, "")
+        page.text(row, 12, step.test.outcome)
+        page.formula(row, CHANGE, f"IF({value}={issued},0,1)", 0, page.styles.change)
+        return
+    found = step.value or 0.0
+    page.formula(row, STEP_VALUE, _value_formula(step, cells, roots), found, page.styles.si)
+    _write_limits(page, row, step, cells)
+    page.number(row, 12, found, page.styles.si)
+    change = f"ABS({value}-{issued})/MAX(ABS({issued}),1E-300)"
+    page.formula(row, CHANGE, change, 0, page.styles.change)
+
+
+def _solved_text(step: StepRecord) -> str:
+    if step.test is not None:
+        return f"{step.test.when_true} if so, else {step.test.when_false}"
+    if step.solved is None:
+        return ROOT_TEXT
+    return plain_text(Equation(step.symbol, step.solved))
+
+
+def _test_formula(step: StepRecord, cells: Cells) -> str:
+    test = step.test
+    if test is None:
+        raise ValueError(f"step {step.number} is no regime test")
+    condition = comparison(test.condition, cells.of(step.operands))
+    return f'IF({condition},"{test.when_true}","{test.when_false}")'
+
+
+def _value_formula(step: StepRecord, cells: Cells, roots: Mapping[int, str]) -> str:
+    text = (
+        roots[step.number] if step.solved is None else formula(step.solved, cells.of(step.operands))
+    )
+    if not step.regime_key or step.regime_key not in cells.by_key:
+        return text
+    regime = cells.by_key[step.regime_key]
+    other = "NA()"
+    for alternative in step.alternatives:
+        value = formula(alternative.solved, cells.of(alternative.operands))
+        other = f'IF({regime}="{alternative.regime}",{value},{other})'
+    return f'IF({regime}="{step.regime}",{text},{other})'
+
+
+def _write_limits(page: Page, row: int, step: StepRecord, cells: Cells) -> None:
+    known = {**cells.of(step.operands), step.symbol: cells.by_key[step.key]}
+    conditions = [
+        comparison(limit.condition, known) for limit in step.limits if _evaluable(limit, known)
+    ]
+    if not conditions:
+        page.text(row, 11, "no limits" if not step.limits else "not evaluated")
+        return
+    shown = "yes" if step.within_limits else "no"
+    page.formula(row, 11, f'IF(AND({",".join(conditions)}),"yes","no")', shown)
+
+
+def _evaluable(limit: LimitRecord, known: Mapping[Symbol, str]) -> bool:
+    condition: Condition = limit.condition
+    return set(condition.symbols) <= set(known)

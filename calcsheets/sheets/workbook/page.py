@@ -1,0 +1,116 @@
+"""One sheet of the workbook: styles, headings and cells, set up for printing."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+from dataclasses import dataclass
+from typing import Any
+
+from ...record import Record
+from .cells import FIRST_ROW
+
+_INK = "#1a1a1a"
+_RULE = "#8c8c8c"
+_SHADE = "#ececec"
+_INPUT_SHADE = "#fff8dc"
+_BASE = {"font_name": "Arial", "font_size": 9, "font_color": _INK, "valign": "top"}
+_CELL = {**_BASE, "border": 1, "border_color": _RULE, "text_wrap": True}
+_PAPERS = {"A4": 9, "letter": 1}
+
+
+@dataclass(frozen=True)
+class Styles:
+    """Cell styles, made once for a workbook."""
+
+    title: Any
+    note: Any
+    heading: Any
+    text: Any
+    strong: Any
+    number: Any
+    si: Any
+    change: Any
+
+
+def make_styles(book: Any) -> Styles:
+    """Return the styles of a workbook."""
+    base, cell = _BASE, _CELL
+    return Styles(
+        title=book.add_format({**base, "font_size": 14, "bold": True, "text_wrap": False}),
+        note=book.add_format({**base, "italic": True, "text_wrap": False}),
+        heading=book.add_format({**cell, "bold": True, "bg_color": _SHADE}),
+        text=book.add_format(cell),
+        strong=book.add_format({**cell, "bold": True}),
+        number=book.add_format({**cell, "num_format": "General", "align": "right"}),
+        si=book.add_format({**cell, "num_format": "0.0000000E+00", "align": "right"}),
+        change=book.add_format({**cell, "num_format": "0.0E+00", "align": "right"}),
+    )
+
+
+def typed_style(book: Any, number_format: str) -> Any:
+    """Return the style of a cell that is meant to be changed."""
+    return book.add_format(
+        {
+            **_CELL,
+            "locked": False,
+            "bg_color": _INPUT_SHADE,
+            "align": "right",
+            "num_format": number_format,
+        }
+    )
+
+
+@dataclass(frozen=True)
+class Column:
+    """A column: heading and width in characters."""
+
+    heading: str
+    width: float
+
+
+class Page:
+    """A sheet under construction. Texts are always written as text, never as formulas."""
+
+    def __init__(self, book: Any, styles: Styles, name: str, record: Record, paper: str) -> None:
+        self.sheet = book.add_worksheet(name)
+        self.styles = styles
+        self.name = name
+        sheet = self.sheet
+        sheet.hide_gridlines(2)
+        sheet.set_landscape()
+        sheet.set_paper(_PAPERS[paper])
+        sheet.set_margins(left=0.5, right=0.5, top=0.8, bottom=0.7)
+        sheet.fit_to_pages(1, 0)
+        identity = f"{_header(record.field('number'))} rev {_header(record.field('revision'))}"
+        sheet.set_header(f"&L&9{_header(record.field('title'))}&R&9{identity}")
+        sheet.set_footer(f"&L&9{name}&C&9In preparation - not checked, not signed&R&9&P of &N")
+        sheet.protect("", {"format_columns": True, "format_rows": True})
+
+    def table(self, title: str, note: str, columns: Sequence[Column]) -> None:
+        """Write title, note and the heading row of a table."""
+        self.sheet.write_string(0, 0, title, self.styles.title)
+        self.sheet.write_string(1, 0, note, self.styles.note)
+        for index, column in enumerate(columns):
+            self.sheet.set_column(index, index, column.width)
+            self.sheet.write_string(FIRST_ROW - 1, index, column.heading, self.styles.heading)
+        self.sheet.freeze_panes(FIRST_ROW, 2)
+        self.sheet.repeat_rows(FIRST_ROW - 1)
+
+    def text(self, row: int, column: int, text: str, style: Any = None) -> None:
+        """Write a text as text."""
+        self.sheet.write_string(row, column, text, style or self.styles.text)
+
+    def number(self, row: int, column: int, value: float, style: Any = None) -> None:
+        """Write a number."""
+        self.sheet.write_number(row, column, value, style or self.styles.number)
+
+    def formula(
+        self, row: int, column: int, formula: str, value: float | str, style: Any = None
+    ) -> None:
+        """Write a formula with the value that it has."""
+        self.sheet.write_formula(row, column, f"={formula}", style or self.styles.number, value)
+
+
+def _header(text: str) -> str:
+    """A header code begins with an ampersand: doubled, it is text."""
+    return text.replace("&", "&&")[:80]

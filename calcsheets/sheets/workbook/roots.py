@@ -1,0 +1,94 @@
+"""Roots as visible rows: each converges again by bisection when an input changes."""
+
+from __future__ import annotations
+
+from ...expressions import Equation
+from ...record import Record, StepRecord
+from ..typesetting import plain_text, symbol_text
+from .cells import FIRST_ROW, ROOTS, Cells, reference
+from .formula import formula
+from .page import Column, Page
+
+_COLUMNS = (
+    Column("Row", 16),
+    Column("Lower end", 24),
+    Column("Upper end", 24),
+    Column("Middle", 24),
+    Column("Relative difference of both sides at the middle", 26),
+    Column("Positive at the lower end (1: yes)", 16),
+)
+_LOW, _HIGH, _MIDDLE, _RESIDUAL, _SIGN = range(1, 6)
+_GAP = 3
+
+
+def root_steps(record: Record) -> tuple[StepRecord, ...]:
+    """Return the steps whose value is a root."""
+    return tuple(step for step in record.steps if step.method == "root")
+
+
+def root_cells(record: Record) -> dict[int, str]:
+    """Return the cell of each converged root, by number of its step."""
+    return {
+        step.number: reference(ROOTS, first + len(step.halvings) - 1, _MIDDLE)
+        for step, first in _first_rows(record)
+    }
+
+
+def write_roots(page: Page, record: Record, cells: Cells) -> None:
+    """Write the rows of every root."""
+    page.table(
+        "Roots",
+        "The interval is halved so that the sides change order inside it. "
+        "No macros and no iterative-calculation mode are needed.",
+        _COLUMNS,
+    )
+    for step, first in _first_rows(record):
+        _write_root(page, first, record, step, cells)
+
+
+def _first_rows(record: Record) -> list[tuple[StepRecord, int]]:
+    """The steps, each with the row of its first interval."""
+    found, row = [], FIRST_ROW + 1
+    for step in root_steps(record):
+        found.append((step, row))
+        row += len(step.halvings) + _GAP
+    return found
+
+
+def _write_root(page: Page, first: int, record: Record, step: StepRecord, cells: Cells) -> None:
+    published = record.relation(step.relation).published
+    if not isinstance(published, Equation):
+        raise ValueError(f"step {step.number} has no equation")
+    symbol, place = symbol_text(step.symbol), step.place
+    title = f"Step {step.number}: {symbol}, {place}: {plain_text(published)}"
+    page.text(first - 1, 0, title, page.styles.note)
+    operands = cells.of(step.operands)
+
+    def residual(at: str) -> str:
+        known = {**operands, step.symbol: at}
+        left, right = formula(published.left, known), formula(published.right, known)
+        return f"({left}-{right})/(ABS({left})+ABS({right}))"
+
+    sign = reference(ROOTS, first, _SIGN)
+    lower_positive = 1 if step.halvings[0].low != step.halvings[1].low else 0
+    lower_positive = lower_positive if step.halvings[0].residual > 0 else 1 - lower_positive
+    page.formula(
+        first, _SIGN, f"IF({residual(reference(ROOTS, first, _LOW))}>0,1,0)", lower_positive
+    )
+    for count, row_values in enumerate(step.halvings):
+        row = first + count
+        low, high = (reference(ROOTS, row, column) for column in (_LOW, _HIGH))
+        page.text(row, 0, f"halved {count} times")
+        if count == 0:
+            page.number(row, _LOW, row_values.low)
+            page.number(row, _HIGH, row_values.high)
+        else:
+            before = {c: reference(ROOTS, row - 1, c) for c in (_LOW, _HIGH, _MIDDLE, _RESIDUAL)}
+            same = f"IF({before[_RESIDUAL]}>0,1,0)={sign}"
+            page.formula(row, _LOW, f"IF({same},{before[_MIDDLE]},{before[_LOW]})", row_values.low)
+            page.formula(
+                row, _HIGH, f"IF({same},{before[_HIGH]},{before[_MIDDLE]})", row_values.high
+            )
+        middle = (row_values.low + row_values.high) / 2
+        page.formula(row, _MIDDLE, f"({low}+{high})/2", middle)
+        page.formula(row, _RESIDUAL, residual(reference(ROOTS, row, _MIDDLE)), row_values.residual)
