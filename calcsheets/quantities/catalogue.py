@@ -20,7 +20,7 @@ from .reference_states import REFERENCE_STATES
 _BIG = Fraction(10**12)
 
 
-def _q(  # noqa: PLR0913 - one row of a table
+def _q(
     symbol: str,
     title: str,
     notation: Notation,

@@ -322,8 +322,8 @@ class _Builder:
         """The same quantity in the other regimes, where everything that it needs is there."""
         for other in self.problem.instances:
             if (
-                other.place is not source.place
-                and other.place.name != source.place.name
+                (other.place is not source.place
+                and other.place.name != source.place.name)
                 or other.regime_variable != source.regime_variable
                 or other.relation.regime in ("", source.relation.regime)
             ):

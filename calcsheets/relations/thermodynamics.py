@@ -63,6 +63,14 @@ _GAS = (
         assumptions=(PERFECT,),
     ),
     Relation(
+        "gamma_from_c_p",
+        "Ratio of specific heats from the specific heat at constant pressure",
+        gamma.equals(c_p / (c_p - R)),
+        derived("Mayer's relation with the definition of γ"),
+        ("gas",),
+        assumptions=(PERFECT,),
+    ),
+    Relation(
         "molar_heat",
         "Molar heat capacity and specific heat",
         C_p.equals(c_p * M_w),

@@ -1,5 +1,6 @@
 """The live workbook."""
 
-from .book import workbook_bytes
+from .book import Workbook, make_workbook
+from .page import FormulaCell
 
-__all__ = ["workbook_bytes"]
+__all__ = ["FormulaCell", "Workbook", "make_workbook"]

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from dataclasses import dataclass
 from datetime import datetime
 from io import BytesIO
 from typing import Any
@@ -10,7 +11,7 @@ from ...record import Record
 from .calculation import write_calculation
 from .cells import CALCULATION, INPUTS, RESULTS, ROOTS, place_cells
 from .inputs import write_inputs
-from .page import Page, make_styles
+from .page import FormulaCell, Page, make_styles
 from .results import write_results
 from .roots import root_cells, root_steps, write_roots
 from .texts import write_assumptions, write_cover, write_references
@@ -23,7 +24,20 @@ _OPTIONS = {
 }
 
 
-def workbook_bytes(record: Record, paper: str = "A4") -> bytes:
+@dataclass(frozen=True)
+class Workbook:
+    """A workbook with the list of its formulas.
+
+    Attributes:
+        content: the file.
+        formulas: every formula cell with the value stored.
+    """
+
+    content: bytes
+    formulas: tuple[FormulaCell, ...]
+
+
+def make_workbook(record: Record, paper: str = "A4") -> Workbook:
     """Return the workbook of a record, the same bytes for the same record.
 
     Args:
@@ -49,7 +63,8 @@ def workbook_bytes(record: Record, paper: str = "A4") -> bytes:
         if ROOTS in pages:
             write_roots(pages[ROOTS], record, cells)
         write_references(pages["References"], record)
-    return buffer.getvalue()
+    formulas = tuple(cell for page in pages.values() for cell in page.formulas)
+    return Workbook(buffer.getvalue(), formulas)
 
 
 def _set_properties(book: Any, record: Record) -> None:

@@ -50,7 +50,7 @@ def write_calculation(page: Page, record: Record, cells: Cells, roots: Mapping[i
         _row(page, FIRST_ROW + index, record, step, cells, roots)
 
 
-def _row(  # noqa: PLR0913 - what a row is made of
+def _row(
     page: Page,
     row: int,
     record: Record,
@@ -77,14 +77,13 @@ def _row(  # noqa: PLR0913 - what a row is made of
         )
         page.text(row, 11, "")
         page.text(row, 12, step.test.outcome)
-        page.formula(row, CHANGE, f"IF({value}={issued},0,1)", 0, page.styles.change)
+        page.changed(row, CHANGE, value, issued)
         return
     found = step.value or 0.0
     page.formula(row, STEP_VALUE, _value_formula(step, cells, roots), found, page.styles.si)
     _write_limits(page, row, step, cells)
     page.number(row, 12, found, page.styles.si)
-    change = f"ABS({value}-{issued})/MAX(ABS({issued}),1E-300)"
-    page.formula(row, CHANGE, change, 0, page.styles.change)
+    page.change(row, CHANGE, value, issued)
 
 
 def _solved_text(step: StepRecord) -> str:

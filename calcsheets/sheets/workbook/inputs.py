@@ -57,9 +57,7 @@ def _row(page: Page, book: Any, row: int, item: InputRecord) -> None:
     page.number(row, 11, item.value, page.styles.si)
     value = reference(page.name, row, INPUT_SI)
     issued = reference(page.name, row, 11)
-    page.formula(
-        row, CHANGE, f"ABS({value}-{issued})/MAX(ABS({issued}),1E-300)", 0, page.styles.change
-    )
+    page.change(row, CHANGE, value, issued)
 
 
 def _typed_style(book: Any, item: InputRecord) -> Any:

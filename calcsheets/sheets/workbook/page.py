@@ -68,6 +68,25 @@ class Column:
     width: float
 
 
+@dataclass(frozen=True)
+class FormulaCell:
+    """A formula as written, for whoever recalculates the workbook.
+
+    Attributes:
+        sheet: name of the sheet.
+        row: row, from 0.
+        column: column, from 0.
+        value: the value that was stored with it.
+        scale: size against which a difference counts, where the value itself may be zero.
+    """
+
+    sheet: str
+    row: int
+    column: int
+    value: float | str
+    scale: float
+
+
 class Page:
     """A sheet under construction. Texts are always written as text, never as formulas."""
 
@@ -75,6 +94,7 @@ class Page:
         self.sheet = book.add_worksheet(name)
         self.styles = styles
         self.name = name
+        self.formulas: list[FormulaCell] = []
         sheet = self.sheet
         sheet.hide_gridlines(2)
         sheet.set_landscape()
@@ -105,10 +125,26 @@ class Page:
         self.sheet.write_number(row, column, value, style or self.styles.number)
 
     def formula(
-        self, row: int, column: int, formula: str, value: float | str, style: Any = None
+        self,
+        row: int,
+        column: int,
+        formula: str,
+        value: float | str,
+        style: Any = None,
+        scale: float = 0.0,
     ) -> None:
         """Write a formula with the value that it has."""
         self.sheet.write_formula(row, column, f"={formula}", style or self.styles.number, value)
+        self.formulas.append(FormulaCell(self.name, row, column, value, scale))
+
+    def change(self, row: int, column: int, value: str, issued: str) -> None:
+        """Write by how much a cell differs from the value as issued."""
+        change = f"ABS({value}-{issued})/MAX(ABS({issued}),1E-300)"
+        self.formula(row, column, change, 0.0, self.styles.change, scale=1.0)
+
+    def changed(self, row: int, column: int, value: str, issued: str) -> None:
+        """Write 1 if a word differs from the word as issued, else 0."""
+        self.formula(row, column, f"IF({value}={issued},0,1)", 0.0, self.styles.change, scale=1.0)
 
 
 def _header(text: str) -> str:

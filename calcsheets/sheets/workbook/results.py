@@ -53,14 +53,13 @@ def _row(page: Page, row: int, result: ResultRecord, cells: Cells) -> None:
     if result.value is None:
         page.formula(row, RESULT_VALUE, source, result.state, page.styles.strong)
         page.text(row, _ISSUED, result.state)
-        page.formula(row, CHANGE, f"IF({value}={issued},0,1)", 0, page.styles.change)
+        page.changed(row, CHANGE, value, issued)
         for column in (_AT_LEAST, _AT_MOST, _VERDICT):
             page.text(row, column, "")
         return
     page.formula(row, RESULT_VALUE, _in_unit(source, result), result.value, page.styles.si)
     page.number(row, _ISSUED, result.value, page.styles.si)
-    change = f"ABS({value}-{issued})/MAX(ABS({issued}),1E-300)"
-    page.formula(row, CHANGE, change, 0, page.styles.change)
+    page.change(row, CHANGE, value, issued)
     _write_criterion(page, row, result, value)
 
 

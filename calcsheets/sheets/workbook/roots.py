@@ -91,4 +91,10 @@ def _write_root(page: Page, first: int, record: Record, step: StepRecord, cells:
             )
         middle = (row_values.low + row_values.high) / 2
         page.formula(row, _MIDDLE, f"({low}+{high})/2", middle)
-        page.formula(row, _RESIDUAL, residual(reference(ROOTS, row, _MIDDLE)), row_values.residual)
+        page.formula(
+            row,
+            _RESIDUAL,
+            residual(reference(ROOTS, row, _MIDDLE)),
+            row_values.residual,
+            scale=1.0,
+        )

@@ -1,0 +1,85 @@
+"""Evaluation in 50-digit decimal arithmetic, from the record alone.
+
+This shares no code with the solving of the relations: another arithmetic, another traversal.
+"""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from typing import Any
+
+from ..errors import DefinitionError
+from ..expressions import (
+    CONSTANTS,
+    Constant,
+    Expr,
+    Function,
+    Negative,
+    Number,
+    Power,
+    Product,
+    Quotient,
+    Root,
+    Sum,
+    Symbol,
+)
+
+DIGITS = 50
+
+
+def evaluate_decimal(expr: Expr, values: Mapping[Symbol, Any]) -> Any:
+    """Return the value of an expression as an mpmath number of 50 digits.
+
+    Args:
+        expr: the expression.
+        values: an mpmath number in coherent SI for each of its symbols.
+
+    Raises:
+        ArithmeticError: if it is undefined there.
+    """
+    import mpmath
+
+    def value(node: Expr) -> Any:
+        match node:
+            case Symbol():
+                return values[node]
+            case Number(fraction):
+                return mpmath.mpf(fraction.numerator) / fraction.denominator
+            case Constant(name):
+                exact = CONSTANTS[name].value
+                if exact is None:
+                    return +mpmath.pi
+                return mpmath.mpf(exact.numerator) / exact.denominator
+            case Sum(terms):
+                return mpmath.fsum(value(term) for term in terms)
+            case Product(factors):
+                return mpmath.fprod(value(factor) for factor in factors)
+            case Quotient(numerator, denominator):
+                return value(numerator) / value(denominator)
+            case Negative(operand):
+                return -value(operand)
+            case Power(base, exponent):
+                return mpmath.power(value(base), value(exponent))
+            case Root(radicand):
+                return mpmath.sqrt(value(radicand))
+            case Function(name, argument):
+                return getattr(mpmath, _NAMES[name])(value(argument))
+        raise DefinitionError(f"expression {node!r}", "it is no node of an expression tree")
+
+    with mpmath.workdps(DIGITS):
+        found = value(expr)
+    if isinstance(found, mpmath.mpc):
+        raise ArithmeticError("no real value")
+    return found
+
+
+_NAMES = {
+    "exp": "exp",
+    "ln": "log",
+    "sin": "sin",
+    "cos": "cos",
+    "tan": "tan",
+    "arcsin": "asin",
+    "arccos": "acos",
+    "arctan": "atan",
+}

@@ -1,0 +1,152 @@
+"""Every step of a record evaluated again, in other arithmetic, into its published form."""
+
+from __future__ import annotations
+
+import operator
+from collections.abc import Callable, Iterator, Mapping
+from dataclasses import dataclass
+from fractions import Fraction
+from types import MappingProxyType
+from typing import Any
+
+from ..expressions import Condition, Equation, Symbol
+from ..record import InputRecord, Record, ResultRecord, StepRecord
+from .decimals import evaluate_decimal
+
+_TOLERANCE = 1e-12
+_COMPARE: Mapping[str, Callable[[Any, Any], bool]] = MappingProxyType(
+    {"<": operator.lt, "<=": operator.le, ">": operator.gt, ">=": operator.ge}
+)
+
+
+@dataclass(frozen=True)
+class Finding:
+    """What the check of one part came to.
+
+    Attributes:
+        part: such as ``step 3`` or ``input 1``.
+        key: the variable.
+        verdict: ``passed``, ``failed`` or ``not possible``.
+        reason: what was compared, and by how much it differs.
+    """
+
+    part: str
+    key: str
+    verdict: str
+    reason: str
+
+
+def check_record(record: Record) -> tuple[Finding, ...]:
+    """Check the conversions, steps, limits and results of a record from the record alone.
+
+    Args:
+        record: the record, as read from its file.
+
+    Returns:
+        One finding for each input, step and result.
+    """
+    findings = [_check_input(item) for item in record.inputs]
+    for step in record.steps:
+        findings += _check_step(record, step)
+    findings += [_check_result(record, result) for result in record.results]
+    return tuple(findings)
+
+
+def _check_input(item: InputRecord) -> Finding:
+    import mpmath
+
+    with mpmath.workdps(50):
+        exact = Fraction(item.number_typed) * Fraction(item.factor) + Fraction(item.offset)
+        value = mpmath.mpf(exact.numerator) / exact.denominator * mpmath.pi**item.pi_power
+    return _compared(f"input {item.number}", item.key, value, item.value, "conversion to SI")
+
+
+def _check_step(record: Record, step: StepRecord) -> Iterator[Finding]:
+    import mpmath
+
+    part = f"step {step.number}"
+    stale = [
+        operand.key for operand in step.operands if operand.value != _value_of(record, operand.key)
+    ]
+    if stale:
+        yield Finding(part, step.key, "failed", f"{stale[0]} is not the value of its origin")
+        return
+    values = {operand.symbol: mpmath.mpf(operand.value) for operand in step.operands}
+    published = record.relation(step.relation).published
+    if step.test is not None:
+        yield _check_test(part, step, values)
+        return
+    if not isinstance(published, Equation) or step.value is None:
+        yield Finding(part, step.key, "not possible", "the record holds no equation or value")
+        return
+    values[step.symbol] = mpmath.mpf(step.value)
+    yield _check_equation(part, step.key, published, values)
+    for limit in step.limits:
+        if limit.holds is not None:
+            holds = _holds(limit.condition, values)
+            verdict = "passed" if holds == limit.holds else "failed"
+            yield Finding(part, step.key, verdict, f"limit evaluated again: {limit.reason}")
+
+
+def _check_test(part: str, step: StepRecord, values: Mapping[Symbol, Any]) -> Finding:
+    test = step.test
+    if test is None:
+        return Finding(part, step.key, "not possible", "no regime test")
+    expected = test.when_true if _holds(test.condition, values) else test.when_false
+    verdict = "passed" if expected == test.outcome else "failed"
+    return Finding(part, step.key, verdict, f"regime test evaluated again: {expected}")
+
+
+def _check_equation(
+    part: str, key: str, published: Equation, values: Mapping[Symbol, Any]
+) -> Finding:
+    """The value is put into the published form; its sensitivity sets what counts as equal."""
+    left = evaluate_decimal(published.left, values)
+    right = evaluate_decimal(published.right, values)
+    scale = abs(left) + abs(right)
+    difference = 0.0 if scale == 0 else float(abs(left - right) / scale)
+    verdict = "passed" if difference <= _TOLERANCE else "failed"
+    return Finding(part, key, verdict, f"sides of the published form differ by {difference:.1e}")
+
+
+def _check_result(record: Record, result: ResultRecord) -> Finding:
+    import mpmath
+
+    part = f"result {result.number}"
+    if result.value is None:
+        step = record.steps[result.step - 1]
+        outcome = step.test.outcome if step.test else ""
+        verdict = "passed" if outcome == result.state else "failed"
+        return Finding(part, result.key, verdict, "state as in its step")
+    with mpmath.workdps(50):
+        si = mpmath.mpf(_value_of(record, result.key))
+        factor, offset = Fraction(result.factor), Fraction(result.offset)
+        shifted = si - mpmath.mpf(offset.numerator) / offset.denominator
+        value = shifted * factor.denominator / factor.numerator / mpmath.pi**result.pi_power
+    for criterion in result.criteria:
+        if _COMPARE[criterion.comparison](result.value, criterion.limit) != criterion.holds:
+            return Finding(part, result.key, "failed", f"criterion {criterion.typed}")
+    return _compared(part, result.key, value, result.value, "conversion to the wanted unit")
+
+
+def _compared(part: str, key: str, value: Any, stored: float, what: str) -> Finding:
+    scale = max(abs(float(value)), 1e-300)
+    difference = float(abs(value - stored)) / scale
+    verdict = "passed" if difference <= _TOLERANCE else "failed"
+    return Finding(part, key, verdict, f"{what} differs by {difference:.1e}")
+
+
+def _holds(condition: Condition, values: Mapping[Symbol, Any]) -> bool:
+    """Whether a condition holds; sides that agree to the last digits of a double are equal."""
+    left = evaluate_decimal(condition.left, values)
+    right = evaluate_decimal(condition.right, values)
+    if abs(left - right) <= 1e-15 * (abs(left) + abs(right)):
+        return condition.comparison in ("<=", ">=")
+    return bool(_COMPARE[condition.comparison](left, right))
+
+
+def _value_of(record: Record, key: str) -> float | None:
+    for item in record.inputs:
+        if item.key == key:
+            return item.value
+    return next((step.value for step in record.steps if step.key == key), None)
