@@ -9,11 +9,11 @@ from pathlib import Path
 from typing import Any, Protocol
 
 from ..errors import CheckError
+from ..sheets.workbook import DIFFERENCE_FORMAT
 from .findings import Finding
 
 ENGINE = "IronCalc"
 LARGEST_DIFFERENCE = 1e-12
-_RATIO_SCALE = 1e-6  # below it stored values are differences of nearly equal numbers
 
 
 class StoredFormula(Protocol):
@@ -81,12 +81,8 @@ def recalculated(workbook: bytes) -> Any:
     return model
 
 
-def _same(stored: float | str, found: object, scale: float) -> bool:
-    if (
-        isinstance(stored, str)
-        or isinstance(found, str | bool)
-        or not isinstance(found, int | float)
-    ):
+def _same(stored: object, found: object, scale: float) -> bool:
+    if not isinstance(stored, int | float) or not isinstance(found, int | float):
         return stored == found
     return abs(found - stored) <= LARGEST_DIFFERENCE * max(abs(stored), scale)
 
@@ -111,9 +107,10 @@ def check_workbook(workbook: bytes) -> tuple[Finding, ...]:
         different = [
             cell.coordinate
             for cell in cells
-            if not _alike(
+            if not _same(
                 stored[sheet.title][cell.coordinate].value,
                 model.get_cell_value(index, cell.row, cell.column),
+                1.0 if cell.number_format == DIFFERENCE_FORMAT else 0.0,
             )
         ]
         if not cells:
@@ -124,9 +121,3 @@ def check_workbook(workbook: bytes) -> tuple[Finding, ...]:
             reason += f"; other values in {', '.join(different[:5])}"
         findings.append(Finding(f"sheet {sheet.title}", "", verdict, reason))
     return tuple(findings)
-
-
-def _alike(stored: object, found: object) -> bool:
-    if isinstance(stored, int | float) and isinstance(found, int | float):
-        return abs(found - stored) <= LARGEST_DIFFERENCE * max(abs(stored), _RATIO_SCALE)
-    return stored == found

@@ -9,6 +9,9 @@ from typing import Any
 from ...record import Record
 from .cells import FIRST_ROW
 
+DIFFERENCE_FORMAT = "0.0E+00"
+"""Number format of cells that hold a relative difference and may be zero."""
+
 _INK = "#1a1a1a"
 _RULE = "#8c8c8c"
 _SHADE = "#ececec"
@@ -43,7 +46,7 @@ def make_styles(book: Any) -> Styles:
         strong=book.add_format({**cell, "bold": True}),
         number=book.add_format({**cell, "num_format": "General", "align": "right"}),
         si=book.add_format({**cell, "num_format": "0.0000000E+00", "align": "right"}),
-        change=book.add_format({**cell, "num_format": "0.0E+00", "align": "right"}),
+        change=book.add_format({**cell, "num_format": DIFFERENCE_FORMAT, "align": "right"}),
     )
 
 

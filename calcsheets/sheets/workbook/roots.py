@@ -96,5 +96,6 @@ def _write_root(page: Page, first: int, record: Record, step: StepRecord, cells:
             _RESIDUAL,
             residual(reference(ROOTS, row, _MIDDLE)),
             row_values.residual,
+            page.styles.change,
             scale=1.0,
         )
