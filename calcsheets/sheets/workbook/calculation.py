@@ -13,21 +13,19 @@ from .page import Column, Page
 
 _COLUMNS = (
     Column("No.", 5),
-    Column("Quantity", 26),
-    Column("Symbol", 8),
-    Column("Place", 22),
-    Column("Value", 16),
-    Column("SI unit", 11),
-    Column("Relation", 26),
-    Column("As published", 42),
-    Column("Solved for the quantity", 42),
-    Column("Source", 34),
-    Column("Limits", 26),
+    Column("Quantity", 22),
+    Column("Symbol", 7),
+    Column("Place", 19),
+    Column("Value", 14),
+    Column("SI unit", 9),
+    Column("Relation and its source", 40),
+    Column("As published, and solved for the quantity", 54),
+    Column("Limits", 20),
     Column("Within limits", 9),
-    Column("Value as issued", 16),
-    Column("Changed by", 11),
+    Column("Value as issued", 14),
+    Column("Changed by", 9),
 )
-CHANGE = 13
+_WITHIN, _ISSUED, CHANGE = 9, 10, 11
 ROOT_TEXT = "root on the sheet Roots"
 
 
@@ -64,25 +62,25 @@ def _row(
     page.text(row, 2, symbol_text(step.symbol))
     page.text(row, 3, step.place)
     page.text(row, 5, unit_text(step.unit) if step.unit else "")
-    page.text(row, 6, relation.title)
-    page.text(row, 7, plain_text(relation.published))
-    page.text(row, 8, _solved_text(step))
-    page.text(row, 9, str(relation.source))
-    page.text(row, 10, "; ".join(plain_text(limit.condition) for limit in step.limits))
+    page.text(row, 6, f"{relation.title}\n{relation.source}")
+    page.text(row, 7, f"{plain_text(relation.published)}\n{_solved_text(step)}")
+    page.text(row, 8, "; ".join(plain_text(limit.condition) for limit in step.limits))
     value = reference(CALCULATION, row, STEP_VALUE)
-    issued = reference(CALCULATION, row, 12)
+    issued = reference(CALCULATION, row, _ISSUED)
     if step.test is not None:
         page.formula(
             row, STEP_VALUE, _test_formula(step, cells), step.test.outcome, page.styles.strong
         )
-        page.text(row, 11, "")
-        page.text(row, 12, step.test.outcome)
+        page.text(row, _WITHIN, "")
+        page.text(row, _ISSUED, step.test.outcome)
         page.changed(row, CHANGE, value, issued)
         return
     found = step.value or 0.0
-    page.formula(row, STEP_VALUE, _value_formula(step, cells, roots), found, page.styles.si)
+    page.formula(
+        row, STEP_VALUE, _value_formula(step, cells, roots), found, page.value_style(found)
+    )
     _write_limits(page, row, step, cells)
-    page.number(row, 12, found, page.styles.si)
+    page.value(row, _ISSUED, found)
     page.change(row, CHANGE, value, issued)
 
 
@@ -122,10 +120,10 @@ def _write_limits(page: Page, row: int, step: StepRecord, cells: Cells) -> None:
         comparison(limit.condition, known) for limit in step.limits if _evaluable(limit, known)
     ]
     if not conditions:
-        page.text(row, 11, "no limits" if not step.limits else "not evaluated")
+        page.text(row, _WITHIN, "no limits" if not step.limits else "not evaluated")
         return
     shown = "yes" if step.within_limits else "no"
-    page.formula(row, 11, f'IF(AND({",".join(conditions)}),"yes","no")', shown)
+    page.formula(row, _WITHIN, f'IF(AND({",".join(conditions)}),"yes","no")', shown)
 
 
 def _evaluable(limit: LimitRecord, known: Mapping[Symbol, str]) -> bool:

@@ -14,18 +14,18 @@ from .page import Column, Page, typed_style
 
 _COLUMNS = (
     Column("No.", 5),
-    Column("Quantity", 26),
+    Column("Quantity", 24),
     Column("Symbol", 8),
     Column("Place", 22),
-    Column("Value", 12),
+    Column("Value", 10),
     Column("Unit", 10),
-    Column("In coherent SI", 16),
+    Column("In coherent SI", 13),
     Column("SI unit", 11),
-    Column("Source", 34),
+    Column("Source", 32),
     Column("Tolerance", 10),
     Column("Status", 14),
-    Column("Value as issued", 16),
-    Column("Changed by", 11),
+    Column("Value as issued", 13),
+    Column("Changed by", 9),
 )
 CHANGE = 12
 
@@ -49,12 +49,12 @@ def _row(page: Page, book: Any, row: int, item: InputRecord) -> None:
     page.number(row, INPUT_TYPED, float(item.number_typed), _typed_style(book, item))
     page.sheet.data_validation(row, INPUT_TYPED, row, INPUT_TYPED, _bounds(item))
     page.text(row, 5, unit_text(item.unit_typed))
-    page.formula(row, INPUT_SI, _conversion(row, item), item.value, page.styles.si)
+    page.formula(row, INPUT_SI, _conversion(row, item), item.value, page.value_style(item.value))
     page.text(row, 7, unit_text(item.unit))
     page.text(row, 8, item.source or "no source stated")
     page.text(row, 9, item.tolerance)
     page.text(row, 10, item.status)
-    page.number(row, 11, item.value, page.styles.si)
+    page.value(row, 11, item.value)
     value = reference(page.name, row, INPUT_SI)
     issued = reference(page.name, row, 11)
     page.change(row, CHANGE, value, issued)

@@ -4,6 +4,8 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 from dataclasses import dataclass
+from decimal import Decimal
+from math import ceil
 from typing import Any
 
 from ...record import Record
@@ -11,6 +13,10 @@ from .cells import FIRST_ROW
 
 DIFFERENCE_FORMAT = "0.0E+00"
 """Number format of cells that hold a relative difference and may be zero."""
+
+VALUE_DIGITS = 8
+_CHARACTERS_PER_WIDTH = 1.05  # characters of the sheet's font in one unit of column width
+_LINE_HEIGHT = 12  # points
 
 _INK = "#1a1a1a"
 _RULE = "#8c8c8c"
@@ -31,7 +37,6 @@ class Styles:
     text: Any
     strong: Any
     number: Any
-    si: Any
     change: Any
 
 
@@ -45,9 +50,19 @@ def make_styles(book: Any) -> Styles:
         text=book.add_format(cell),
         strong=book.add_format({**cell, "bold": True}),
         number=book.add_format({**cell, "num_format": "General", "align": "right"}),
-        si=book.add_format({**cell, "num_format": "0.0000000E+00", "align": "right"}),
         change=book.add_format({**cell, "num_format": DIFFERENCE_FORMAT, "align": "right"}),
     )
+
+
+def value_format(value: float, digits: int) -> str:
+    """Return the number format that shows a value with so many significant digits."""
+    if value == 0:
+        return "0"
+    exponent = Decimal(value).adjusted()
+    if not -4 < exponent < 7:
+        return "0." + "0" * (digits - 1) + "E+00" if digits > 1 else "0E+00"
+    decimals = max(0, digits - 1 - exponent)
+    return "0." + "0" * decimals if decimals else "0"
 
 
 def typed_style(book: Any, number_format: str) -> Any:
@@ -95,9 +110,12 @@ class Page:
 
     def __init__(self, book: Any, styles: Styles, name: str, record: Record, paper: str) -> None:
         self.sheet = book.add_worksheet(name)
+        self.book = book
         self.styles = styles
         self.name = name
         self.formulas: list[FormulaCell] = []
+        self._widths: dict[int, float] = {}
+        self._lines: dict[int, int] = {}
         sheet = self.sheet
         sheet.hide_gridlines(2)
         sheet.set_landscape()
@@ -114,14 +132,34 @@ class Page:
         self.sheet.write_string(0, 0, title, self.styles.title)
         self.sheet.write_string(1, 0, note, self.styles.note)
         for index, column in enumerate(columns):
-            self.sheet.set_column(index, index, column.width)
+            self.width(index, column.width)
             self.sheet.write_string(FIRST_ROW - 1, index, column.heading, self.styles.heading)
         self.sheet.freeze_panes(FIRST_ROW, 2)
         self.sheet.repeat_rows(FIRST_ROW - 1)
 
+    def width(self, column: int, width: float) -> None:
+        """Set the width of a column, in characters."""
+        self._widths[column] = width
+        self.sheet.set_column(column, column, width)
+
     def text(self, row: int, column: int, text: str, style: Any = None) -> None:
-        """Write a text as text."""
+        """Write a text as text, and make its row high enough for it."""
         self.sheet.write_string(row, column, text, style or self.styles.text)
+        room = max(1.0, self._widths.get(column, 1000.0) * _CHARACTERS_PER_WIDTH)
+        lines = sum(max(1, ceil(len(part) / room)) for part in text.split("\n"))
+        if lines > self._lines.get(row, 1):
+            self._lines[row] = lines
+            self.sheet.set_row(row, lines * _LINE_HEIGHT + 2)
+
+    def value(self, row: int, column: int, value: float, digits: int = VALUE_DIGITS) -> None:
+        """Write a number with so many significant digits."""
+        self.number(row, column, value, self.value_style(value, digits))
+
+    def value_style(self, value: float, digits: int = VALUE_DIGITS) -> Any:
+        """Return the style that shows a value with so many significant digits."""
+        return self.book.add_format(
+            {**_CELL, "align": "right", "num_format": value_format(value, digits)}
+        )
 
     def number(self, row: int, column: int, value: float, style: Any = None) -> None:
         """Write a number."""

@@ -15,14 +15,14 @@ _COLUMNS = (
     Column("Result", 34),
     Column("Symbol", 8),
     Column("Place", 24),
-    Column("Value", 16),
+    Column("Value", 12),
     Column("Unit", 10),
-    Column("At least", 12),
-    Column("At most", 12),
+    Column("At least", 9),
+    Column("At most", 9),
     Column("Criterion", 12),
     Column("Used as", 14),
-    Column("Step", 6),
-    Column("Value as issued", 16),
+    Column("Step", 8),
+    Column("Value as issued", 12),
     Column("Changed by", 11),
 )
 _AT_LEAST, _AT_MOST, _VERDICT, _ISSUED, CHANGE = 6, 7, 8, 11, 12
@@ -32,7 +32,7 @@ def write_results(page: Page, record: Record, cells: Cells) -> None:
     """Write one row for each wanted result."""
     page.table(
         "Results against criteria",
-        "Compared unrounded. The values follow the inputs; the verdicts follow the values.",
+        "Compared unrounded, shown rounded. The values follow the inputs; the verdicts follow the values.",
         _COLUMNS,
     )
     for index, result in enumerate(record.results):
@@ -57,8 +57,9 @@ def _row(page: Page, row: int, result: ResultRecord, cells: Cells) -> None:
         for column in (_AT_LEAST, _AT_MOST, _VERDICT):
             page.text(row, column, "")
         return
-    page.formula(row, RESULT_VALUE, _in_unit(source, result), result.value, page.styles.si)
-    page.number(row, _ISSUED, result.value, page.styles.si)
+    style = page.value_style(result.value, result.digits)
+    page.formula(row, RESULT_VALUE, _in_unit(source, result), result.value, style)
+    page.value(row, _ISSUED, result.value, result.digits)
     page.change(row, CHANGE, value, issued)
     _write_criterion(page, row, result, value)
 

@@ -17,8 +17,8 @@ STATEMENT = (
 def write_cover(page: Page, record: Record) -> None:
     """Write identity, purpose, the state of the workbook and the program's identification."""
     sheet, styles = page.sheet, page.styles
-    sheet.set_column(0, 0, 26)
-    sheet.set_column(1, 1, 90)
+    page.width(0, 26)
+    page.width(1, 90)
     sheet.write_string(0, 0, record.field("title"), styles.title)
     row = 2
     for item in record.identity:
