@@ -1,0 +1,230 @@
+"""What the sheet prints for each step of the calculation."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Iterator, Mapping
+from dataclasses import dataclass
+
+from markupsafe import Markup
+
+from ...expressions import (
+    CONSTANTS,
+    Condition,
+    Constant,
+    Equation,
+    Expr,
+    Symbol,
+    constants_in,
+    dimension_of,
+)
+from ...quantities import Dimension, catalogue
+from ...record import LimitRecord, Record, RelationRecord, StepRecord
+from ..typesetting import (
+    NumberText,
+    move_words,
+    plain_text,
+    significant,
+    substituted_mathml,
+    symbol_mathml,
+    symbol_text,
+    typed,
+)
+from .breaking import inside_of
+from .figures import (
+    equation_html,
+    number_html,
+    sides_html,
+    symbol_html,
+    value_html,
+    working,
+)
+from .picture import picture
+from .views import ResultLine, known_text, result_lines
+
+_MOVE_SHARE = 0.62
+_LIMIT_SHARE = 0.4
+
+
+@dataclass(frozen=True)
+class Line:
+    """An equation with its number and the words that lead to it."""
+
+    number: str
+    words: str
+    operand: Markup | None
+    equation: Markup
+
+
+@dataclass(frozen=True)
+class Where:
+    """One line of the list of symbols; ``kind`` is ``input``, ``step`` or ``constant``."""
+
+    symbol: Markup
+    title: str
+    place: str
+    value: Markup
+    kind: str
+    number: int
+    source: str
+
+
+@dataclass(frozen=True)
+class LimitLine:
+    """One limit with the values of both sides; ``None`` where they are not known."""
+
+    condition: Markup
+    left: Markup | None
+    right: Markup | None
+    holds: bool | None
+    reason: str
+
+
+@dataclass(frozen=True)
+class Card:
+    """One step as printed."""
+
+    step: StepRecord
+    relation: RelationRecord
+    known: str
+    symbol: Markup | None
+    published: Line
+    lines: tuple[Line, ...]
+    substituted: Markup
+    sides: tuple[Markup, ...]
+    value: Markup | None
+    residual: Markup | None
+    bracket: tuple[Markup, ...]
+    other_roots: tuple[tuple[Markup, str], ...]
+    limits: tuple[LimitLine, ...]
+    where: tuple[Where, ...]
+    results: tuple[ResultLine, ...]
+
+
+def cards(record: Record, width: float) -> tuple[Card, ...]:
+    """Return every step of a record as printed.
+
+    Args:
+        record: the record.
+        width: width for equations, in points.
+    """
+    return tuple(_card(record, step, width) for step in record.steps)
+
+
+def _card(record: Record, step: StepRecord, width: float) -> Card:
+    relation = record.relation(step.relation)
+    published = relation.published
+    lines = tuple(_lines(step, width))
+    return Card(
+        step=step,
+        relation=relation,
+        known=known_text(relation),
+        symbol=None if step.test else symbol_html(step.symbol),
+        published=Line(f"{step.number}.1", "", None, equation_html(published, width)),
+        lines=lines,
+        substituted=_substituted(step, relation, width),
+        sides=_sides(step.test.condition, step.test.left, step.test.right) if step.test else (),
+        value=None if step.value is None else value_html(step.value, step.unit),
+        residual=number_html(significant(step.residual, 2)) if step.residual else None,
+        bracket=tuple(value_html(end, step.unit) for end in step.bracket),
+        other_roots=tuple((value_html(r.value, step.unit), r.reason) for r in step.other_roots),
+        limits=tuple(_limit(limit, width) for limit in step.limits),
+        where=(*_operands(step), *_constants(published)),
+        results=tuple(line for line in result_lines(record) if line.result.step == step.number),
+    )
+
+
+def _lines(step: StepRecord, width: float) -> Iterator[Line]:
+    for index, move in enumerate(step.moves, start=2):
+        words, operand = move_words(move.action, move.operand)
+        shown = None if operand is None else equation_html(operand, width * _MOVE_SHARE)
+        yield Line(f"{step.number}.{index}", words, shown, equation_html(move.result, width))
+    if step.moves and step.solved is not None:
+        solved = Equation(step.symbol, step.solved)
+        if solved != step.moves[-1].result:
+            number = f"{step.number}.{len(step.moves) + 2}"
+            yield Line(number, "solve for the wanted root", None, equation_html(solved, width))
+
+
+def _numbers(step: StepRecord) -> Mapping[Symbol, tuple[NumberText, str]]:
+    return {operand.symbol: (working(operand.value), operand.unit) for operand in step.operands}
+
+
+def _substituted(step: StepRecord, relation: RelationRecord, width: float) -> Markup:
+    """Numbers in the place of symbols: in the solved form, or in both sides of what is published.
+
+    A root has no solved form, so the value found is put into the published one.
+    """
+    numbers = dict(_numbers(step))
+    values = ", ".join(
+        f"{symbol_text(symbol)} = {number.with_unit(unit)}"
+        for symbol, (number, unit) in numbers.items()
+    )
+    if step.solved is not None:
+        left, right = symbol_mathml(step.symbol), substituted_mathml(step.solved, numbers)
+        words = f"{symbol_text(step.symbol)} = {plain_text(step.solved)} with {values}"
+        return sides_html(left, right, words, width)
+    if step.value is not None:
+        found = (working(step.value), step.unit)
+        numbers[step.symbol] = found
+        values = f"{values}, {symbol_text(step.symbol)} = {found[0].with_unit(found[1])}"
+    words = f"{plain_text(relation.published)} with {values}"
+    return _picture_of(substituted_mathml(relation.published, numbers), words, width)
+
+
+def _picture_of(mathml: str, words: str, width: float) -> Markup:
+    return picture(inside_of(mathml), width).svg(words)
+
+
+def _sides(condition: Condition, left: float | None, right: float | None) -> tuple[Markup, ...]:
+    """Both sides of a condition with their unit; none where they are not known."""
+    if left is None or right is None:
+        return ()
+    unit = coherent_unit(dimension_of(condition.left))
+    return tuple(value_html(value, unit) for value in (left, right))
+
+
+def _limit(limit: LimitRecord, width: float) -> LimitLine:
+    sides = _sides(limit.condition, limit.left, limit.right) or (None, None)
+    shown = equation_html(limit.condition, width * _LIMIT_SHARE)
+    return LimitLine(shown, sides[0], sides[1], limit.holds, limit.reason)
+
+
+def coherent_unit(dimension: Dimension) -> str:
+    """Return the coherent unit of a dimension by the name that the vocabulary gives it."""
+    named = (q.unit for q in catalogue().values() if q.dimension == dimension)
+    return "1" if dimension.is_one else next(named, str(dimension))
+
+
+def _operands(step: StepRecord) -> Iterator[Where]:
+    for operand in step.operands:
+        kind = "input" if operand.input else "step"
+        yield Where(
+            symbol_html(operand.symbol),
+            operand.title,
+            operand.place,
+            value_html(operand.value, operand.unit),
+            kind,
+            operand.input or operand.step,
+            "",
+        )
+
+
+def _constants(published: Equation | Condition) -> Iterator[Where]:
+    for constant in _constants_of((published.left, published.right)):
+        definition = CONSTANTS[constant.name]
+        if definition.value is None:
+            continue
+        yield Where(
+            symbol_html(constant),
+            definition.title,
+            "",
+            number_html(typed(definition.text), coherent_unit(definition.dimension)),
+            "constant",
+            0,
+            definition.source,
+        )
+
+
+def _constants_of(expressions: Iterable[Expr]) -> tuple[Constant, ...]:
+    return tuple(dict.fromkeys(found for e in expressions for found in constants_in(e)))
+
