@@ -32,6 +32,7 @@ from ..typesetting import (
 from .breaking import inside_of
 from .figures import (
     equation_html,
+    equation_picture,
     number_html,
     sides_html,
     symbol_html,
@@ -42,17 +43,27 @@ from .picture import picture
 from .views import ResultLine, known_text, result_lines
 
 _MOVE_SHARE = 0.62
-_LIMIT_SHARE = 0.4
+_LIMIT_SHARE = 0.36
+_TEXT_DEPTH = 3.4  # how far a line of text reaches below its baseline, in points
 
 
 @dataclass(frozen=True)
 class Line:
-    """An equation with its number and the words that lead to it."""
+    """An equation with its number and the words that lead to it.
+
+    Attributes:
+        number: number of the equation.
+        words: the move in words, empty for the published form.
+        operand: operand of the move as a picture, or ``None``.
+        equation: the equation as a picture.
+        rise: how far above its bottom the number stands, in points.
+    """
 
     number: str
     words: str
     operand: Markup | None
     equation: Markup
+    rise: float
 
 
 @dataclass(frozen=True)
@@ -119,7 +130,7 @@ def _card(record: Record, step: StepRecord, width: float) -> Card:
         relation=relation,
         known=known_text(relation),
         symbol=None if step.test else symbol_html(step.symbol),
-        published=Line(f"{step.number}.1", "", None, equation_html(published, width)),
+        published=_line(f"{step.number}.1", published, width),
         lines=lines,
         substituted=_substituted(step, relation, width),
         sides=_sides(step.test.condition, step.test.left, step.test.right) if step.test else (),
@@ -137,12 +148,25 @@ def _lines(step: StepRecord, width: float) -> Iterator[Line]:
     for index, move in enumerate(step.moves, start=2):
         words, operand = move_words(move.action, move.operand)
         shown = None if operand is None else equation_html(operand, width * _MOVE_SHARE)
-        yield Line(f"{step.number}.{index}", words, shown, equation_html(move.result, width))
+        yield _line(f"{step.number}.{index}", move.result, width, words, shown)
     if step.moves and step.solved is not None:
         solved = Equation(step.symbol, step.solved)
         if solved != step.moves[-1].result:
             number = f"{step.number}.{len(step.moves) + 2}"
-            yield Line(number, "solve for the wanted root", None, equation_html(solved, width))
+            yield _line(number, solved, width, "solve for the wanted root")
+
+
+def _line(
+    number: str,
+    statement: Equation | Condition,
+    width: float,
+    words: str = "",
+    operand: Markup | None = None,
+) -> Line:
+    depth = equation_picture(statement, width).depth
+    return Line(
+        number, words, operand, equation_html(statement, width), max(0.0, depth - _TEXT_DEPTH)
+    )
 
 
 def _numbers(step: StepRecord) -> Mapping[Symbol, tuple[NumberText, str]]:

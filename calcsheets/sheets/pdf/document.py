@@ -84,6 +84,7 @@ def render_html(record: Record, paper: str = "A4") -> str:
         inputs=views.input_lines(record),
         relation_assumptions=views.assumption_lines(record),
         cards=cards(record, size.column),
+        outside=tuple(step for step in record.steps if not step.within_limits),
         checks=views.check_lines(record),
         sources=views.source_lines(record),
     )
@@ -132,6 +133,7 @@ def pdf_bytes(record: Record, paper: str = "A4", attachments: Sequence[Attachmen
         font_config=fonts,
         attachments=[_attached(item, _date(record)) for item in attachments],
         pdf_variant="pdf/a-3a",
+        full_fonts=True,
         pdf_identifier=bytes.fromhex(record.digest)[:16],
         finisher=_each_file_once,
     )

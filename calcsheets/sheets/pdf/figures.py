@@ -21,7 +21,7 @@ from ..typesetting import (
     unit_text,
 )
 from .breaking import inside_of, joined
-from .picture import SIZE, picture
+from .picture import SIZE, Picture, picture
 
 WORKING_DIGITS = 8
 """Significant digits with which a person repeats a step."""
@@ -80,8 +80,12 @@ def symbol_html(symbol: Symbol | Constant) -> Markup:
 
 def equation_html(statement: Expr | Equation | Condition, width: float) -> Markup:
     """Return an equation or condition as a picture of at most this width in points."""
-    markup = inside_of(presentation_mathml(statement))
-    return picture(markup, width).svg(plain_text(statement))
+    return equation_picture(statement, width).svg(plain_text(statement))
+
+
+def equation_picture(statement: Expr | Equation | Condition, width: float) -> Picture:
+    """Return the picture of an equation or condition, with its measures."""
+    return picture(inside_of(presentation_mathml(statement)), width)
 
 
 def sides_html(left: str, right: str, alternative: str, width: float) -> Markup:
@@ -105,7 +109,9 @@ def conversion_html(item: InputRecord) -> Markup:
         )
     if not offset and factor == 1 and not item.pi_power:
         return value_html(item.value, item.unit)
-    return Markup("{} = {}").format(start, value_html(item.value, item.unit))
+    # The line may be broken before the equals sign.
+    shown = value_html(item.value, item.unit)
+    return Markup('<span class="number">{}</span> <span class="number">= {}</span>').format(start, shown)
 
 
 def _plus(value: Fraction) -> Markup:

@@ -35,6 +35,7 @@ class Picture:
         markup: drawing instructions, to be put into an ``svg`` element.
         width: width in points, as printed.
         height: height in points, as printed.
+        depth: how far it reaches below the baseline of its last line, in points.
         scale: size as a share of the normal size.
         lines: number of lines.
     """
@@ -42,6 +43,7 @@ class Picture:
     markup: str
     width: float
     height: float
+    depth: float
     scale: float
     lines: int
 
@@ -50,7 +52,8 @@ class Picture:
         width, height = self.width / self.scale, self.height / self.scale
         return Markup(
             f'<svg xmlns="http://www.w3.org/2000/svg" width="{self.width:.2f}pt" '
-            f'height="{self.height:.2f}pt" viewBox="0 0 {width:.2f} {height:.2f}">'
+            f'height="{self.height:.2f}pt" viewBox="0 0 {width:.2f} {height:.2f}" '
+            f'style="vertical-align:-{self.depth:.2f}pt">'
             f"<title>{escape(alternative)}</title>{self.markup}</svg>"
         )
 
@@ -164,7 +167,10 @@ def _composed(lines: tuple[tuple[_Part, ...], ...], indent: float, width: float)
     baselines, height = _baselines(placed, len(lines))
     scale = min(1.0, width / widest)
     markup = "".join(_group(item, baselines[item.line]) for item in placed)
-    return Picture(markup, widest * scale, height * scale, scale, len(lines))
+    depth = height - baselines[-1]
+    return Picture(
+        markup, widest * scale, height * scale, depth * scale, scale, len(lines)
+    )
 
 
 def _baselines(placed: list[_Placed], lines: int) -> tuple[list[float], float]:
