@@ -269,7 +269,7 @@ def _rates() -> Iterator[Unit]:
         ("slug", _SLUG, "slug"),
     ):
         for time, seconds in _VOLUME_TIMES:
-            aliases = (f"lb/{time}",) if mass == "lbm" else ()
+            aliases: tuple[str, ...] = (f"lb/{time}",) if mass == "lbm" else ()
             if mass == "lbm" and time == "h":
                 aliases += ("lb/hr", "lbm/hr", "pph")
             if mass == "kg" and time == "h":

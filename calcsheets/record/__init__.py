@@ -1,27 +1,29 @@
 """Stage 7, record: the frozen outcome of a calculation; its digest is what people sign."""
 
 from .canonical import digest_of, read_record, record_bytes
+from .context import (
+    AssumptionRecord,
+    FieldRecord,
+    LegRecord,
+    ReferenceRecord,
+    StationRecord,
+)
 from .model import (
     SCHEMA,
     AlternativeRecord,
-    AssumptionRecord,
     ConsistencyRecord,
     CriterionRecord,
-    FieldRecord,
     HalvingRecord,
     InputRecord,
-    LegRecord,
     LimitRecord,
     MoveRecord,
     Operand,
     Record,
-    ReferenceRecord,
     RegimeTest,
     RelationRecord,
     ResultRecord,
     RootRecord,
     SourceRecord,
-    StationRecord,
     StepRecord,
 )
 

@@ -19,13 +19,14 @@ def quantity_of(record: Record, key: str) -> Any:
     for result in record.results:
         if result.key == key:
             return result.state or _quantity(result.value, result.unit)
-    for item in record.inputs:
-        if item.key == key:
-            return _quantity(item.value, item.unit)
+    for given in record.inputs:
+        if given.key == key:
+            return _quantity(given.value, given.unit)
     for step in record.steps:
         if step.key == key:
             return step.test.outcome if step.test else _quantity(step.value, step.unit)
-    keys = sorted({item.key for item in (*record.results, *record.inputs, *record.steps)})
+    keys = sorted({*(r.key for r in record.results), *(i.key for i in record.inputs),
+                   *(s.key for s in record.steps)})  # fmt: skip
     raise DefinitionError(f"key {key}", f"the record holds only {', '.join(keys)}")
 
 

@@ -30,26 +30,28 @@ from ..solving import (
     working_precision,
 )
 from .checks import consistency_checks
+from .context import (
+    AssumptionRecord,
+    FieldRecord,
+    LegRecord,
+    ReferenceRecord,
+    StationRecord,
+)
 from .model import (
     SCHEMA,
     AlternativeRecord,
-    AssumptionRecord,
     CriterionRecord,
-    FieldRecord,
     HalvingRecord,
     InputRecord,
-    LegRecord,
     LimitRecord,
     MoveRecord,
     Operand,
     Record,
-    ReferenceRecord,
     RegimeTest,
     RelationRecord,
     ResultRecord,
     RootRecord,
     SourceRecord,
-    StationRecord,
     StepRecord,
 )
 
@@ -322,8 +324,7 @@ class _Builder:
         """The same quantity in the other regimes, where everything that it needs is there."""
         for other in self.problem.instances:
             if (
-                (other.place is not source.place
-                and other.place.name != source.place.name)
+                (other.place is not source.place and other.place.name != source.place.name)
                 or other.regime_variable != source.regime_variable
                 or other.relation.regime in ("", source.relation.regime)
             ):

@@ -8,6 +8,13 @@ from __future__ import annotations
 from dataclasses import dataclass
 
 from ..expressions import Condition, Equation, Expr, Symbol
+from .context import (
+    AssumptionRecord,
+    FieldRecord,
+    LegRecord,
+    ReferenceRecord,
+    StationRecord,
+)
 
 SCHEMA = "calcsheets-record/1"
 
@@ -366,55 +373,6 @@ class RelationRecord:
     assumptions: tuple[str, ...]
     cautions: tuple[str, ...]
     errs: str
-
-
-@dataclass(frozen=True)
-class AssumptionRecord:
-    """One assumption; a hold if it is to be confirmed."""
-
-    text: str
-    status: str
-    basis: str
-    owner: str
-    due: str
-
-
-@dataclass(frozen=True)
-class ReferenceRecord:
-    """One document that the calculation rests on."""
-
-    id: str
-    title: str
-    edition: str
-
-
-@dataclass(frozen=True)
-class StationRecord:
-    """A station of the path, for the picture of it."""
-
-    name: str
-    kind: str
-    title: str
-
-
-@dataclass(frozen=True)
-class LegRecord:
-    """A process of the path."""
-
-    name: str
-    start: str
-    end: str
-    process: str
-    through: str
-    title: str
-
-
-@dataclass(frozen=True)
-class FieldRecord:
-    """One field of the cover block."""
-
-    name: str
-    text: str
 
 
 @dataclass(frozen=True)

@@ -27,12 +27,13 @@ class Library:
     chapters: tuple[Chapter, ...]
 
     def __post_init__(self) -> None:
-        names = [item.name for item in (*self.relations, *self.regimes)]
+        items: tuple[Relation | Regime, ...] = (*self.relations, *self.regimes)
+        names = [item.name for item in items]
         for name in sorted(set(names)):
             if names.count(name) > 1:
                 raise DefinitionError(f"relation {name}", "the name is taken twice")
         offers = {*STATION_KINDS, "gas", "site", *self.processes}
-        for item in (*self.relations, *self.regimes):
+        for item in items:
             unknown = sorted(set(item.offered_by) - offers)
             if unknown:
                 raise DefinitionError(f"relation {item.name}", f"nothing is called {unknown[0]}")

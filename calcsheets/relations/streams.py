@@ -52,7 +52,13 @@ _MASS = (
         definition("Definition of volume flow"),
         _STREAM,
     ),
-    Relation("mass_flux", "Mass flux", mdot.equals(G * A), definition("Definition of mass flux"), _FLOWS),
+    Relation(
+        "mass_flux",
+        "Mass flux",
+        mdot.equals(G * A),
+        definition("Definition of mass flux"),
+        _FLOWS,
+    ),
     Relation(
         "molar_flow",
         "Mass flow and flow of amount of substance",

@@ -159,7 +159,8 @@ def _from_sympy(expr: Any, names: dict[str, Expr]) -> Expr | None:
 
 
 def _fraction(factors: tuple[Expr, ...]) -> Expr:
-    above, below = [], []
+    above: list[Expr] = []
+    below: list[Expr] = []
     for factor in factors:
         match factor:
             case Power(base, Number(value)) if value < 0:

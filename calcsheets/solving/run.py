@@ -170,7 +170,9 @@ class _Run:
 
     def _branch(self, place: str) -> str:
         brief = self.problem.brief
-        return next((p.branch for p in (*brief.stations, *brief.legs) if p.name == place), "")
+        branches = {station.name: station.branch for station in brief.stations}
+        branches |= {leg.name: leg.branch for leg in brief.legs}
+        return branches.get(place, "")
 
     def finish(self, reached: Reach) -> Outcome:
         """Solve everything that the wanted results need."""

@@ -149,7 +149,7 @@ def _solution(
 
 
 def _residual_function(question: Question) -> Callable[[Ball], Ball]:
-    """The difference of both sides over the sum of their magnitudes, as a function of the unknown."""
+    """Difference of both sides over the sum of their magnitudes, as a function of the unknown."""
     published = question.relation.published
 
     def residual(at: Ball) -> Ball:
@@ -309,8 +309,16 @@ def _no_root(question: Question) -> NoRoot:
         unknown=question.key,
         bounds=f"{_text(exact_ball(low))} to {_text(exact_ball(high))}",
         reached=_reached(question, reached, low, high),
-        asked="0" if on_both else _text(evaluate(asked, question.values)),
+        asked="0" if on_both else _asked(question, asked),
     )
+
+
+def _asked(question: Question, expr: Expr) -> str:
+    """The value of the known side; other inputs may leave it without one."""
+    try:
+        return _text(evaluate(expr, question.values))
+    except OutsideDomainError:
+        return "no value at all"
 
 
 def _reached(question: Question, expr: Expr, low: Fraction, high: Fraction) -> str:

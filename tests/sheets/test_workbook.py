@@ -16,7 +16,7 @@ from calcsheets.checking import check_workbook, require_same_values
 from calcsheets.errors import CheckError
 from calcsheets.record import Record
 from calcsheets.sheets.workbook import FormulaCell, make_workbook
-from tests.conftest import EXAMPLES
+from tests.conftest import EXAMPLES, ROOT
 from tests.sheets.recalculating import by_ironcalc, by_libreoffice, input_cells, with_cells
 
 # Functions of the first edition of ISO/IEC 29500, part 1, 18.17.7 (from memory).
@@ -176,7 +176,7 @@ def test_a_regime_changes_in_the_workbook_as_in_the_brief(tmp_path: Path) -> Non
 
 def test_a_regime_without_a_relation_shows_that_there_is_no_value(tmp_path: Path) -> None:
     """A let-down that does not stay choked has no closed form here: no number may be shown."""
-    record = calcsheets.calculate(calcsheets.read_brief(EXAMPLES[-1].parent / "receiver-letdown.toml"))
+    record = calcsheets.calculate(calcsheets.read_brief(ROOT / "examples/receiver-letdown.toml"))
     content = make_workbook(record).content
     keys = [item.key for item in record.inputs]
     cell = input_cells(content)[keys.index("p_g@header")]

@@ -137,10 +137,11 @@ def _plain(digits: str, leading: int) -> str:
 
 
 def _grouped(whole: str, decimals: str) -> str:
-    """Group in threes on both sides of the point if more than four digits stand there."""
-    if len(whole) + len(decimals) > _UNGROUPED:
+    """Group in threes on each side of the point where more than four digits stand."""
+    if len(whole) > _UNGROUPED:
         first = len(whole) % 3
         heads = [whole[:first]] if first else []
         whole = GROUP_SPACE.join(heads + [whole[i : i + 3] for i in range(first, len(whole), 3)])
+    if len(decimals) > _UNGROUPED:
         decimals = GROUP_SPACE.join(decimals[i : i + 3] for i in range(0, len(decimals), 3))
     return f"{whole}.{decimals}" if decimals else whole

@@ -32,7 +32,7 @@ def write_results(page: Page, record: Record, cells: Cells) -> None:
     """Write one row for each wanted result."""
     page.table(
         "Results against criteria",
-        "Compared unrounded, shown rounded. The values follow the inputs; the verdicts follow the values.",
+        "Compared unrounded, shown rounded. Values follow the inputs, verdicts the values.",
         _COLUMNS,
     )
     for index, result in enumerate(record.results):
