@@ -118,14 +118,18 @@ class NotEnoughInputs(PlanningError):
         wanted: the key that cannot be reached, such as ``mdot@orifice``.
         title: the quantity and its place in words.
         closing: sets of additional inputs, each of which would close the problem, best first.
+        regimes: what stands against relations that would give it, as sentences.
     """
 
     wanted: str
     title: str
     closing: tuple[tuple[str, ...], ...]
+    regimes: tuple[str, ...] = ()
 
     def __str__(self) -> str:
         head = f"{self.wanted} ({self.title}) does not follow from the inputs"
+        if self.regimes:
+            return f"{head}. {' '.join(self.regimes)} Change these inputs, or leave it out."
         if not self.closing:
             return (
                 f"{head}: no relation offered by the path gives it. "
@@ -204,6 +208,7 @@ class NoRoot(SolvingError):
         bounds: the interval searched, as text.
         reached: the range that the relation reaches inside the bounds, as text.
         asked: what the other side asks for, as text.
+        limits: limits of the relation that the inputs miss, as clauses.
     """
 
     relation: str
@@ -211,12 +216,14 @@ class NoRoot(SolvingError):
     bounds: str
     reached: str
     asked: str
+    limits: tuple[str, ...] = ()
 
     def __str__(self) -> str:
+        missed = f" Limit not met: {'; '.join(self.limits)}." if self.limits else ""
         return (
             f"{self.relation}: no {self.unknown} within {self.bounds} satisfies it; "
             f"there the relation reaches {self.reached}, asked is {self.asked}. "
-            "Check the inputs of this step."
+            f"Check the inputs of this step.{missed}"
         )
 
 

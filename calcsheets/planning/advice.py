@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections import Counter
 from collections.abc import Iterator, Mapping
 from itertools import combinations
 
@@ -24,16 +25,20 @@ def closing_inputs(
         wanted: the variable that does not follow.
 
     Returns:
-        Single inputs, best ones first; pairs where no single input closes it.
+        Single inputs, or pairs where no single input closes it; those that close most other
+        results too come first, then those that most relations use.
     """
     candidates = list(_candidates(problem, regimes, wanted))
+    results = [item.variable for item in problem.brief.wanted]
+    uses = Counter(v for instance in problem.instances for v in instance.binding.values())
     for size in (1, 2):
         found = []
         for extra in combinations(candidates[:_MOST_CANDIDATES], size):
             closed = reach(problem, regimes, extra=extra)
             if wanted in closed:
-                steps = len(closed.needed([wanted]))
-                found.append((steps, extra))
+                open_results = sum(result not in closed for result in results)
+                users = sum(uses[variable] for variable in extra)
+                found.append(((open_results, -users), extra))
         if found:
             return tuple(extra for _, extra in sorted(found)[:_MOST_SETS])
     return ()
@@ -47,6 +52,10 @@ def _candidates(
     seen = {wanted}
     layer = [wanted]
     gauges = set(GAUGE_OF.values())
+    if wanted in problem.regimes:
+        layer = list(problem.regimes[wanted].binding.values())
+        seen.update(layer)
+        yield from (variable for variable in sorted(set(layer)) if variable not in reached)
     while layer:
         following: list[Variable] = []
         for instance in problem.instances:

@@ -156,9 +156,7 @@ class _Run:
         return solution
 
     def _conditions(self, source: Instance) -> Iterator[Condition]:
-        """Limits of a relation, and the test of the regime in which it holds."""
-        for limit in source.relation.limits:
-            yield limit.condition
+        """The test of the regime in which a relation holds."""
         variable = source.regime_variable
         if variable is not None and not source.relation.regime_role:
             regime = self.problem.regimes[variable].regime
@@ -285,9 +283,32 @@ def _not_enough(
     problem: Problem, regimes: Mapping[Variable, str], missing: Variable
 ) -> NotEnoughInputs:
     quantity = catalogue()[missing.symbol]
-    closing = closing_inputs(problem, regimes, missing)
+    against = tuple(dict.fromkeys(_against(problem, regimes, missing)))
+    closing = () if against else closing_inputs(problem, regimes, missing)
     return NotEnoughInputs(
         wanted=str(missing),
         title=f"{quantity.title}, {problem.title(missing)}",
         closing=tuple(tuple(str(variable) for variable in extra) for extra in closing),
+        regimes=against,
     )
+
+
+def _against(
+    problem: Problem, regimes: Mapping[Variable, str], missing: Variable
+) -> Iterator[str]:
+    """Say which regimes stand against relations that would give a variable."""
+    for instance in problem.instances:
+        condition = instance.regime_variable
+        if condition is None or missing not in instance.binding.values():
+            continue
+        found, needed = regimes.get(condition), instance.relation.regime
+        offered = [
+            other.relation.regime
+            for other in problem.instances
+            if other.regime_variable == condition and missing in other.binding.values()
+        ]
+        if found is not None and found not in offered:
+            yield (
+                f"The regime of {condition.place} is {found}, and the library gives "
+                f"{missing.symbol} there only where it is {needed}."
+            )
