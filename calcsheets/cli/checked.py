@@ -15,7 +15,7 @@ from .output import print_json, print_table, working
 
 def check(folder: Path, json: bool) -> int:
     """Check the record and the workbook of a package and say what was found."""
-    record_file, workbook_file = _one(folder, "json"), _one(folder, "xlsx")
+    record_file, workbook_file = _files(folder)
     with working("checking"):
         record = read_record(record_file.read_bytes())
         findings = (*check_record(record), *check_workbook(workbook_file.read_bytes()))
@@ -31,15 +31,17 @@ def check(folder: Path, json: bool) -> int:
     return MISSED if failed else DONE
 
 
-def _one(folder: Path, suffix: str) -> Path:
-    found = sorted(folder.glob(f"*.{suffix}")) if folder.is_dir() else []
-    if len(found) != 1:
+def _files(folder: Path) -> tuple[Path, Path]:
+    """The record and the workbook of a package."""
+    records = sorted(folder.glob("*.json")) if folder.is_dir() else []
+    workbooks = sorted(folder.glob("*.xlsx")) if folder.is_dir() else []
+    if len(records) != 1 or len(workbooks) != 1:
         raise OutputError(
             str(folder),
-            f"there is no package here: {len(found)} files *.{suffix}",
+            f"there is no package here: {len(records)} files *.json, {len(workbooks)} files *.xlsx",
             "Name the folder that calcsheets prepare wrote",
         )
-    return found[0]
+    return records[0], workbooks[0]
 
 
 def _facts(finding: Finding) -> dict[str, str]:
