@@ -44,10 +44,12 @@ class Instance:
     Attributes:
         relation: the relation.
         place: where it is offered.
+        rank: position of the relation in the library; of two equal ways the first is taken.
     """
 
     relation: Relation
     place: Place
+    rank: int
 
     @cached_property
     def binding(self) -> Mapping[Symbol, Variable]:
@@ -55,9 +57,9 @@ class Instance:
         return {symbol: self.place.variable(symbol) for symbol in self.relation.symbols}
 
     @cached_property
-    def key(self) -> tuple[str, str]:
+    def key(self) -> tuple[int, str, str]:
         """A total order on instances."""
-        return (self.relation.name, self.place.name)
+        return (self.rank, self.relation.name, self.place.name)
 
     @property
     def regime_variable(self) -> Variable | None:
@@ -69,15 +71,21 @@ class Instance:
 
 @dataclass(frozen=True)
 class RegimeInstance:
-    """A regime test at a process."""
+    """A regime test at a process, ranked among the tests of the library."""
 
     regime: Regime
     place: Place
+    rank: int
 
     @cached_property
     def binding(self) -> Mapping[Symbol, Variable]:
         """The variable of each symbol of the test."""
         return {symbol: self.place.variable(symbol) for symbol in self.regime.symbols}
+
+    @cached_property
+    def key(self) -> tuple[int, str, str]:
+        """A total order on regime tests."""
+        return (self.rank, self.regime.name, self.place.name)
 
     @property
     def variable(self) -> Variable:
@@ -118,33 +126,37 @@ class Problem:
 
 def state_problem(brief: Brief, library: Library) -> Problem:
     """Return the problem that a brief states, with the relations of a library."""
+    places = tuple(_places(brief))
     instances = [
-        Instance(relation, place)
-        for place, offers in _places(brief)
-        for relation in library.relations
+        Instance(relation, place, rank)
+        for rank, relation in enumerate(library.relations)
+        for place, offers in places
         if offers in relation.offered_by
     ]
-    instances += [
-        Instance(_equality(same, index), _same_place(same))
-        for index, same in enumerate(brief.same_as)
-    ]
-    if brief.gas.components:
-        components = [gas.key for gas, _ in brief.gas.components]
-        place = _gas_place(brief)
-        instances += [
-            Instance(relation, place) for relation in mixture_relations(components, brief.gas.basis)
-        ]
+    for relation, place in (*_equalities(brief), *_mixture(brief)):
+        instances.append(Instance(relation, place, len(library.relations)))
     tests = [
-        RegimeInstance(regime, place)
-        for place, offers in _places(brief)
-        for regime in library.regimes
+        RegimeInstance(regime, place, rank)
+        for rank, regime in enumerate(library.regimes)
+        for place, offers in places
         if offers in regime.offered_by
     ]
     return Problem(
         brief=brief,
         instances=tuple(sorted(instances, key=lambda instance: instance.key)),
-        regimes={test.variable: test for test in tests},
+        regimes={test.variable: test for test in sorted(tests, key=lambda test: test.key)},
     )
+
+
+def _equalities(brief: Brief) -> Iterator[tuple[Relation, Place]]:
+    for index, same in enumerate(brief.same_as):
+        yield _equality(same, index), _same_place(same)
+
+
+def _mixture(brief: Brief) -> Iterator[tuple[Relation, Place]]:
+    components = [gas.key for gas, _ in brief.gas.components]
+    for relation in mixture_relations(components, brief.gas.basis) if components else ():
+        yield relation, _gas_place(brief)
 
 
 def _places(brief: Brief) -> Iterator[tuple[Place, str]]:

@@ -2,8 +2,8 @@
 
 Relations are hyperedges: all but one of their variables lead to the last. Knuth's
 generalisation of the shortest-path search finds for each variable the derivation of least
-cost: roots before all else are avoided, then empirical relations, then steps. Ties fall by
-name, so that the same brief always gives the same plan.
+cost: roots before all else are avoided, then empirical relations, then steps. Of equal ways
+the one that stands first in the library is taken, so that a brief always gives the same plan.
 """
 
 from __future__ import annotations
@@ -19,7 +19,6 @@ from ..quantities import Variable
 from .problem import Instance, Problem, RegimeInstance
 
 Cost = tuple[int, int, int]
-_KNOWN: Cost = (0, 0, 0)
 
 
 @dataclass(frozen=True)
@@ -97,43 +96,66 @@ def reach(
     for index, edge in enumerate(edges):
         for variable in set(edge.inputs) - known:
             users[variable].append(index)
-    costs: dict[Variable, Cost] = {}
-    heap: list[tuple[Cost, str, tuple[str, str], int]] = []
+    derivations = _Derivations()
+    heap: list[tuple[Cost, str, tuple[int, str, str], int]] = []
 
     def offer(index: int) -> None:
         edge = edges[index]
-        if edge.target in known or edge.target in costs:
-            return
-        total = _add(edge.cost, *(costs.get(item, _KNOWN) for item in edge.inputs))
-        heapq.heappush(heap, (total, str(edge.target), _key(edge), index))
+        if edge.target not in known and edge.target not in derivations.edges:
+            cost = derivations.cost(edge)
+            heapq.heappush(heap, (cost, str(edge.target), edge.source.key, index))
 
     for index, count in enumerate(waiting):
         if count == 0:
             offer(index)
-    found: dict[Variable, Edge] = {}
     while heap:
-        cost, _, _, index = heapq.heappop(heap)
+        _, _, _, index = heapq.heappop(heap)
         edge = edges[index]
-        if edge.target in costs:
+        if edge.target in derivations.edges:
             continue
-        costs[edge.target] = cost
-        found[edge.target] = edge
+        derivations.take(edge)
         for user in users[edge.target]:
             waiting[user] -= 1
             if waiting[user] == 0:
                 offer(user)
-    return Reach(known, found)
+    return Reach(known, derivations.edges)
 
 
-def _add(*costs: Cost) -> Cost:
-    roots, empirical, steps = zip(*costs, strict=True)
-    return sum(roots), sum(empirical), sum(steps)
+class _Derivations:
+    """What has been reached, and for each variable the set of everything behind it.
 
+    Sets are bits of whole numbers, so that a step that two inputs share counts once.
+    """
 
-def _key(edge: Edge) -> tuple[str, str]:
-    if isinstance(edge.source, Instance):
-        return edge.source.key
-    return (edge.source.regime.name, edge.source.place.name)
+    def __init__(self) -> None:
+        self.edges: dict[Variable, Edge] = {}
+        self._behind: dict[Variable, int] = {}
+        self._roots = 0
+        self._empirical = 0
+
+    def cost(self, edge: Edge) -> Cost:
+        """Return the cost of a derivation that ends with this edge."""
+        behind = self._union(edge)
+        own = edge.cost
+        return (
+            own[0] + (behind & self._roots).bit_count(),
+            own[1] + (behind & self._empirical).bit_count(),
+            own[2] + behind.bit_count(),
+        )
+
+    def take(self, edge: Edge) -> None:
+        """Settle on an edge for its target."""
+        bit = 1 << len(self.edges)
+        self._behind[edge.target] = self._union(edge) | bit
+        self._roots |= bit * edge.cost[0]
+        self._empirical |= bit * edge.cost[1]
+        self.edges[edge.target] = edge
+
+    def _union(self, edge: Edge) -> int:
+        union = 0
+        for item in edge.inputs:
+            union |= self._behind.get(item, 0)
+        return union
 
 
 def _edges(
