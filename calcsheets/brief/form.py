@@ -13,6 +13,7 @@ from ..quantities import Kind, catalogue
 from ..relations import STATION_KINDS, load_library
 from .model import ASSUMPTION_STATUSES, BASES, CONSEQUENCES, STATUSES, USES
 
+RESERVED_NAMES = ("gas", "site")
 NAME_PATTERN = "^[a-z][a-z0-9_]*$"
 KEY_PATTERN = "^[A-Za-z][A-Za-z0-9_]*@[a-z][a-z0-9_]*$"
 DATE_PATTERN = "^[0-9]{4}-[0-9]{2}-[0-9]{2}$"
@@ -85,6 +86,12 @@ def brief_form() -> Form:
     """Return the form; quantities and processes come from the vocabulary and the library."""
     text = "text"
     processes = tuple(load_library().processes)
+    branches = tuple(
+        dict.fromkeys(
+            branch.name for relation in load_library().relations for branch in relation.branches
+        )
+    )
+    branch = Key("branch", text, "Which of several roots is meant.", choices=branches)
     return Form(
         calculation=_keys(
             Key("number", text, "Identification number of the calculation.", True),
@@ -107,7 +114,11 @@ def brief_form() -> Form:
         ),
         site=_keys(*_quantities("site")),
         gas=_keys(
-            Key("name", text, "Name of the gas; data come from the program unless given here."),
+            Key(
+                "name",
+                text,
+                "Name of the gas; its data come from the program unless the table gives its own.",
+            ),
             Key("composition", "fractions", "Gas names with their fractions; one may be balance."),
             Key("by", text, "What the fractions count.", choices=BASES),
             *_quantities("gas"),
@@ -115,7 +126,7 @@ def brief_form() -> Form:
         station=_keys(
             Key("kind", text, "What the station is; stream if left out.", choices=STATION_KINDS),
             Key("title", text, "The place in words."),
-            Key("branch", text, "Which of several roots is meant, such as subsonic."),
+            branch,
             *_quantities("station"),
         ),
         leg=_keys(
@@ -126,7 +137,7 @@ def brief_form() -> Form:
             Key("through", "name", "Name of the orifice that the gas passes."),
             Key("title", text, "The process in words."),
             Key("regime", text, "The regime, where the inputs leave it open."),
-            Key("branch", text, "Which of several roots is meant, such as subsonic."),
+            branch,
             *_quantities("station"),
         ),
         value=_keys(

@@ -2,8 +2,9 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Mapping
-from decimal import Decimal, InvalidOperation
+from decimal import Decimal
 
 from ..errors import UnknownGas
 from ..gases import Gas, GasValue, find_gas
@@ -53,11 +54,10 @@ def _single(table: Table, name: str, own: Stated) -> tuple[GasStatement, Stated]
             gas = find_gas(name)
         except UnknownGas as problem:
             if not own.given:
-                near = f"Did you mean {' or '.join(problem.near)}" if problem.near else ""
                 table.refuse(
                     "name",
                     f'the gas "{name}" is not known',
-                    near or "See calcsheets gases, or give gamma and M_w of your own",
+                    f"{_asked(problem)}See calcsheets gases, or give gamma and M_w of your own",
                 )
     title = gas.title if gas else name or "gas by own properties"
     cautions = gas.cautions if gas else ()
@@ -67,6 +67,10 @@ def _single(table: Table, name: str, own: Stated) -> tuple[GasStatement, Stated]
         table.refuse("name", "the gas is not stated", "Give name or properties")
     values = tuple(_data(gas, "gas"))
     return GasStatement(title, (), "", gas, cautions), Stated(values, ())
+
+
+def _asked(problem: UnknownGas) -> str:
+    return f"Did you mean {' or '.join(problem.near)}? " if problem.near else ""
 
 
 def _data(gas: Gas, place: str) -> tuple[Given, Given]:
@@ -85,7 +89,11 @@ def _mixture(
 ) -> tuple[GasStatement, Stated]:
     basis = root.text(form.gas["by"])
     if not basis:
-        root.refuse("", "the composition does not say by what", 'Add by = "mole" or by = "mass"')
+        root.refuse(
+            "",
+            "the composition does not say what its fractions count",
+            'Add by = "mole" or by = "mass"',
+        )
     table = root.table("composition")
     fractions = _fractions(table)
     components: list[tuple[Gas, Decimal]] = []
@@ -94,12 +102,19 @@ def _mixture(
         try:
             gas = find_gas(component)
         except UnknownGas as problem:
-            near = f"Did you mean {' or '.join(problem.near)}" if problem.near else ""
             table.refuse(
-                component, f'the gas "{component}" is not known', near or "See calcsheets gases"
+                component,
+                f'the gas "{component}" is not known',
+                f"{_asked(problem)}See calcsheets gases",
             )
-        if gas.key in places or any(gas is other for other, _ in components):
-            table.refuse(component, f'"{gas.key}" is named twice', "Rename or join the entries")
+        if any(gas is other for other, _ in components):
+            table.refuse(component, f"{gas.title} is named twice", "Give it one fraction")
+        if gas.key in places:
+            table.refuse(
+                component,
+                f'"{gas.key}" is also the name of a station or process',
+                "Rename the station or process",
+            )
         components.append((gas, measured))
         given.append(_fraction(table, component, gas, measured, basis))
         given += _data(gas, gas.key)
@@ -128,26 +143,33 @@ def _fractions(table: Table) -> Mapping[str, Decimal]:
     total = sum((value for value in found.values() if value is not None), Decimal(0))
     missing = [name for name, value in found.items() if value is None]
     if len(missing) > 1:
-        table.refuse(missing[1], "only one gas can be the balance", "Give the other fractions")
+        table.refuse(missing[1], "only one gas can be the balance", "Give the others as fractions")
     if not missing and total != 1:
         table.refuse(
             "", f"the fractions add to {total}, not to 1", 'Correct them, or give one as "balance"'
         )
     if missing and total >= 1:
         table.refuse(
-            missing[0], f"the other fractions add to {total}", "Leave something for the balance"
+            missing[0],
+            f"the other fractions add to {total} and leave nothing for the balance",
+            "Correct them",
         )
     return {name: 1 - total if value is None else value for name, value in found.items()}
 
 
+_FRACTION = re.compile(r"\s*([0-9]{0,3}\.?[0-9]{1,20})\s*(%?)\s*")
+
+
 def _decimal(table: Table, name: str, text: str) -> Decimal:
-    percent = text.strip().endswith("%")
-    try:
-        value = Decimal(text.strip().removesuffix("%").strip())
-    except InvalidOperation:
+    """Read a fraction; so few digits that sums of decimals stay exact."""
+    match = _FRACTION.fullmatch(text)
+    if match is None:
         table.refuse(name, f'"{text}" is not a fraction', 'Write "0.79", "79 %" or "balance"')
-    if percent:
-        value = value / 100
+    value = Decimal(match.group(1)) / (100 if match.group(2) else 1)
     if not 0 < value < 1:
-        table.refuse(name, f'"{text}": a fraction must lie between 0 and 1', "Correct it")
+        table.refuse(
+            name,
+            f'"{text}": a fraction must lie between 0 and 1',
+            'Write it in the manner of "0.79" or "79 %"',
+        )
     return value

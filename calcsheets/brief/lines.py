@@ -9,7 +9,8 @@ from collections.abc import Mapping
 Path = tuple[str | int, ...]
 
 _HEADER = re.compile(r"\s*(\[\[?)\s*([^\]#]+?)\s*\]\]?\s*(#.*)?$")
-_ASSIGNMENT = re.compile(r"""\s*((?:"[^"]*"|'[^']*'|[A-Za-z0-9_.-]+)(?:\s*\.\s*)?)+\s*=""")
+_KEY = r"""(?:"[^"]*"|'[^']*'|[A-Za-z0-9_-]+)"""
+_ASSIGNMENT = re.compile(rf"\s*{_KEY}(?:\s*\.\s*{_KEY})*\s*=")
 _PART = re.compile(r"""\s*(?:"([^"]*)"|'([^']*)'|([A-Za-z0-9_-]+))\s*\.?""")
 
 
@@ -22,7 +23,7 @@ def line_index(text: str) -> Mapping[Path, int]:
     counts: Counter[Path] = Counter()
     table: Path = ()
     quotes = ""
-    for line_number, line in enumerate(text.splitlines(), start=1):
+    for line_number, line in enumerate(text.split("\n"), start=1):
         if quotes:
             quotes = "" if quotes in line else quotes
             continue

@@ -8,26 +8,39 @@ from decimal import Decimal
 from pathlib import Path
 
 from ..errors import BriefError, OutputError, UnitError
-from ..quantities import Kind, Measured, Variable, catalogue, find_unit, quantity_stated
+from ..quantities import (
+    GAUGE_OF,
+    Kind,
+    Measured,
+    Quantity,
+    Unit,
+    Variable,
+    catalogue,
+    default_unit,
+    find_unit,
+    quantity_stated,
+)
+from ..quantities import dimension as dim
 from ..relations import load_library
-from .form import NAME_PATTERN, Form, brief_form
+from .form import NAME_PATTERN, RESERVED_NAMES, Form, brief_form
 from .gas import read_gas
 from .lines import line_index
 from .model import (
     Assumption,
     Brief,
+    Given,
     Leg,
     Limit,
     Reference,
     Station,
     Wanted,
 )
-from .table import Table, nearest
+from .table import Table, either, nearest, visible
 from .values import Stated, read_values
 
 LARGEST_FILE = 1_000_000
-_RESERVED = ("gas", "site")
 _DEFAULT_DIGITS = 4
+_MASS_OF = {dim.VOLUME_FLOW: "mdot", dim.VOLUME: "m"}
 
 
 def read_brief(path: str | Path) -> Brief:
@@ -58,7 +71,7 @@ def read_brief(path: str | Path) -> Brief:
             "A brief is a short text; check that this is one",
         )
     try:
-        text = content.decode("utf-8")
+        text = content.decode("utf-8-sig")
     except UnicodeDecodeError as problem:
         line = content[: problem.start].count(b"\n") + 1
         raise BriefError(
@@ -82,18 +95,19 @@ def parse_brief(text: str, file: str = "brief") -> Brief:
     root.require_known(form.tables, "table")
     for name in ("calculation", "gas", "wanted"):
         if name not in root.entries:
-            root.refuse("", f"the table [{name}] is missing", f"Add it: [{name}]")
+            root.refuse("", f"the table [{name}] is missing", "Add it")
     calculation = root.table("calculation")
     calculation.require(form.calculation)
     stations, station_values = _read_stations(root, form)
     legs, leg_values = _read_path(root, form, stations)
-    places = (*_RESERVED, *(s.name for s in stations), *(leg.name for leg in legs))
+    places = (*RESERVED_NAMES, *(s.name for s in stations), *(leg.name for leg in legs))
     gas, gas_values = read_gas(root.table("gas"), form, places)
     site = root.table("site")
     site.require(form.site)
     stated = [read_values(site, "site", form.site, form.value), gas_values]
     stated += [*station_values, *leg_values]
     _require_places(stated, places)
+    _require_pressures(root, stated[0].given, stated[1:])
     return Brief(
         file=file,
         text=text,
@@ -125,12 +139,28 @@ def _parse_toml(text: str, file: str) -> Table:
     except (tomllib.TOMLDecodeError, RecursionError, ValueError) as problem:
         found = re.search(r"\(at line (\d+), column (\d+)\)", str(problem))
         line = int(found.group(1)) if found else text.count("\n") + 1
-        reason = str(problem).partition(" (at")[0]
-        reason = reason[:1].lower() + reason[1:] if reason else "nested too deeply"
+        reason = visible(_toml_reason(str(problem).partition(" (at")[0]))
         raise BriefError(
             file, line, "", f"this is not TOML: {reason}", "Correct the text at this line"
         ) from problem
     return Table(file, (), entries, line_index(text))
+
+
+_TOML_REASONS = {
+    "": "brackets are nested too deeply",
+    "Cannot overwrite a value": "a key or table stands here for the second time",
+    "Illegal character '\\n'": "a quotation mark is missing at the end of a text",
+    "Invalid value": "what follows the equals sign is no value; a text needs quotation marks",
+}
+
+
+def _toml_reason(said: str) -> str:
+    """What the TOML reader says, in the words of this program where it has some."""
+    twice = re.fullmatch(r"Cannot declare \((.*?),?\) twice", said)
+    if twice:
+        name = twice.group(1).replace("'", "").replace(", ", ".")
+        return f"the table [{name}] stands here for the second time"
+    return _TOML_REASONS.get(said) or said[:1].lower() + said[1:]
 
 
 def _read_stations(root: Table, form: Form) -> tuple[tuple[Station, ...], list[Stated]]:
@@ -154,13 +184,13 @@ def _read_stations(root: Table, form: Form) -> tuple[tuple[Station, ...], list[S
 
 
 def _require_name(table: Table, name: str) -> None:
-    if not re.match(NAME_PATTERN, name):
+    if not re.fullmatch(NAME_PATTERN, name):
         table.refuse(
             name,
             f'"{name}" is not a name of small letters, digits and _',
             "Rename the station",
         )
-    if name in _RESERVED:
+    if name in RESERVED_NAMES:
         table.refuse(name, f'"{name}" is reserved', "Choose another name for the station")
 
 
@@ -193,21 +223,23 @@ def _check_leg(table: Table, leg: Leg, stations: list[str], before: list[Leg]) -
     for key, name in (("from", leg.start), ("to", leg.end)):
         if name not in stations:
             near = nearest(name, stations)
-            remedy = f"Did you mean {near}" if near else f"Add [stations.{name}]"
+            ask = f"Did you mean {near}? If not, add" if near else "Add"
+            remedy = f"{ask} [stations.{name}]"
             table.refuse(key, f'there is no station "{name}"', remedy)
-    if leg.name in (*stations, *_RESERVED, *(other.name for other in before)):
+    if leg.name in (*stations, *RESERVED_NAMES, *(other.name for other in before)):
         table.refuse("name", f'the name "{leg.name}" is taken', "Choose another name")
     if leg.start == leg.end:
         table.refuse("to", "the process begins and ends at one station", "Name the second station")
     needed = load_library().processes[leg.process].needs_through
     orifices = {other.name: other for other in before if other.process == "orifice"}
     if needed and leg.through not in orifices:
-        have = f"one of {', '.join(orifices)}" if orifices else "an orifice stated before it"
         table.refuse(
             "through" if leg.through else "",
             f'the process "{leg.process}" passes an orifice, and '
-            + (f'"{leg.through}" is none' if leg.through else "none is named"),
-            f"Name {have}: through = ...",
+            + (f'"{leg.through}" is no orifice before it' if leg.through else "none is named"),
+            f"Write through = {either(orifices)}"
+            if orifices
+            else "State the orifice in a [[path]] entry before this one, and name it in through",
         )
     if leg.through and not needed:
         table.refuse("through", f'the process "{leg.process}" passes no orifice', "Remove through")
@@ -218,7 +250,7 @@ def _check_leg(table: Table, leg: Leg, stations: list[str], before: list[Leg]) -
         for outcome in (regime.when_true, regime.when_false)
     ]
     if leg.regime and leg.regime not in regimes:
-        choice = f"Choose {' or '.join(regimes)}" if regimes else "Remove regime"
+        choice = f"Choose {either(regimes)}" if regimes else "Remove regime"
         table.refuse(
             "regime", f'"{leg.regime}" is no regime of the process "{leg.process}"', choice
         )
@@ -231,25 +263,83 @@ def _require_places(stated: list[Stated], places: tuple[str, ...]) -> None:
             _check_variable(table, "same_as", str(same.other), places)
 
 
+def _require_pressures(root: Table, site: tuple[Given, ...], stated: list[Stated]) -> None:
+    """Refuse a gauge pressure below the vacuum, where the atmosphere of the site is stated."""
+    atmosphere = next((item.measured for item in site if item.variable.symbol == "p_atm"), None)
+    if atmosphere is None:
+        return
+    for given in (item for values in stated for item in values.given):
+        pressure = given.measured
+        if pressure.unit.kind is Kind.GAUGE and pressure.rational + atmosphere.rational <= 0:
+            raise BriefError(
+                root.file,
+                given.line,
+                str(given.variable),
+                f'"{pressure.text}" lies below the vacuum: the atmosphere of the site is '
+                f"{atmosphere.text}",
+                "Check the number and its unit",
+            )
+
+
 def _check_variable(table: Table, key: str, text: str, places: tuple[str, ...]) -> Variable:
     symbol, _, place = text.partition("@")
     if not place:
-        table.refuse(key, f'"{text}" names no place', f"Write {symbol}@ and the name of a station")
+        table.refuse(
+            key,
+            f'"{text}" names no place',
+            f"Write {symbol}@ and the name of a station or process",
+        )
     if place not in places:
         near = nearest(place, places)
-        remedy = f"Did you mean {symbol}@{near}" if near else f"Places: {', '.join(places)}"
-        table.refuse(key, f'there is no station or process "{place}"', remedy)
+        ask = f"Did you mean {symbol}@{near}? " if near else ""
+        table.refuse(
+            key,
+            f'there is no station or process "{place}"',
+            f"{ask}The places are {', '.join(places)}",
+        )
     if symbol not in catalogue():
-        near = nearest(symbol, catalogue())
-        remedy = f"Did you mean {near}@{place}" if near else "See calcsheets relations"
-        table.refuse(key, f'there is no quantity "{symbol}"', remedy)
+        home = place if place in RESERVED_NAMES else "station"
+        near = nearest(symbol, [name for name, q in catalogue().items() if q.home == home])
+        ask = f"Did you mean {near}@{place}? " if near else ""
+        table.refuse(
+            key,
+            f'there is no quantity "{symbol}"',
+            f"{ask}The quantities are listed in docs/brief.md",
+        )
+    _require_home(table, key, Variable(symbol, place))
     return Variable(symbol, place)
+
+
+def _require_home(table: Table, key: str, variable: Variable) -> None:
+    quantity = catalogue()[variable.symbol]
+    if quantity.home == "station" and variable.place in RESERVED_NAMES:
+        table.refuse(
+            key,
+            f"{quantity.title} is a quantity of a station or process, not of the {variable.place}",
+            f"Write {quantity.symbol}@ and the name of a station or process",
+        )
+    if quantity.home not in ("station", variable.place):
+        table.refuse(
+            key,
+            f"{quantity.title} is a quantity of the {quantity.home}",
+            f"Write {quantity.symbol}@{quantity.home}",
+        )
 
 
 def _read_wanted(table: Table, form: Form, places: tuple[str, ...]) -> tuple[Wanted, ...]:
     if not table.entries:
         table.refuse("", "nothing is wanted", 'Add results, such as "mdot@orifice" = {}')
-    return tuple(_read_result(table, name, form, places) for name in table.entries)
+    results: dict[Variable, Wanted] = {}
+    for name in table.entries:
+        result = _read_result(table, name, form, places)
+        if result.variable in results:
+            table.refuse(
+                name,
+                f"{result.variable} is wanted already, at line {results[result.variable].line}",
+                "Remove one of the two",
+            )
+        results[result.variable] = result
+    return tuple(results.values())
 
 
 def _read_result(root: Table, name: str, form: Form, places: tuple[str, ...]) -> Wanted:
@@ -266,17 +356,16 @@ def _read_result(root: Table, name: str, form: Form, places: tuple[str, ...]) ->
                 table.refuse(key, f"{name} is a state in words", f"Remove {key}")
     else:
         try:
-            unit = find_unit(unit_text or quantity.unit)
-            if unit_text or quantity.kind is Kind.REFERENCE_VOLUME:
-                one = Measured(Decimal(1), unit, unit.name)
-                variable = Variable(quantity_stated(quantity, one).symbol, asked.place)
+            unit = find_unit(unit_text) if unit_text else default_unit(quantity)
+            one = Measured(Decimal(1), unit, unit.name)
+            variable = Variable(quantity_stated(quantity, one).symbol, asked.place)
         except UnitError as problem:
             table.refuse_unit("unit", problem)
     return Wanted(
         variable=variable,
         unit=unit,
         digits=table.digits(keys["digits"], _DEFAULT_DIGITS),
-        limits=_read_limits(table, asked),
+        limits=_read_limits(table, variable, unit),
         used_as=table.text(keys["used_as"]),
         otherwise=table.text(keys["otherwise"], "fail"),
         title=table.text(keys["title"]),
@@ -284,17 +373,38 @@ def _read_result(root: Table, name: str, form: Form, places: tuple[str, ...]) ->
     )
 
 
-def _read_limits(table: Table, asked: Variable) -> tuple[Limit, ...]:
-    limits = []
+def _read_limits(table: Table, wanted: Variable, unit: Unit | None) -> tuple[Limit, ...]:
+    limits: list[Limit] = []
     for key, comparison in (("at_most", "<="), ("at_least", ">=")):
-        if key in table.entries:
-            measured = table.measured(key)
-            try:
-                stated = quantity_stated(catalogue()[asked.symbol], measured)
-            except UnitError as problem:
-                table.refuse_unit(key, problem)
-            limits.append(Limit(comparison, measured, Variable(stated.symbol, asked.place)))
+        if unit is not None and key in table.entries:
+            measured = _read_limit(table, key, catalogue()[wanted.symbol], unit)
+            limits.append(Limit(comparison, measured, wanted))
+    if len(limits) == 2 and limits[1].measured.rational > limits[0].measured.rational:
+        table.refuse(
+            "at_least",
+            f'"{limits[1].measured.text}" is above at_most, "{limits[0].measured.text}"',
+            "Correct one of the two; no result can meet both",
+        )
     return tuple(limits)
+
+
+def _read_limit(table: Table, key: str, wanted: Quantity, unit: Unit) -> Measured:
+    """Read a limit; it must have the datum and the reference state of the result."""
+    measured = table.measured(key)
+    absolute = next((a for a, gauge in GAUGE_OF.items() if gauge == wanted.symbol), wanted.symbol)
+    mass = _MASS_OF[wanted.dimension] if wanted.reference else absolute
+    try:
+        stated = quantity_stated(catalogue()[mass], measured)
+    except UnitError as problem:
+        table.refuse_unit(key, problem)
+    if stated.symbol != wanted.symbol:
+        table.refuse(
+            key,
+            f'"{measured.text}": this limit is a {stated.title}, and the result is wanted in '
+            f"{unit.name}, as {wanted.title}",
+            f"Which is meant? Give the limit in {unit.name}, or the unit as {measured.unit.name}",
+        )
+    return measured
 
 
 def _read_assumption(table: Table, form: Form) -> Assumption:

@@ -6,16 +6,19 @@ import difflib
 import re
 from collections.abc import Iterable, Iterator, Mapping
 from dataclasses import dataclass
+from datetime import date
 from typing import Any, NoReturn
 
 from ..errors import BriefError, UnitError
-from ..quantities import Measured, read_measured
+from ..quantities import Kind, Measured, catalogue, read_measured
 from .form import DATE_PATTERN, KEY_PATTERN, NAME_PATTERN, Key, Keys
 from .lines import Path, line_of
 
-_LONGEST_TEXT = 2000
-_MOST_DIGITS = 12
-_CONTROL = re.compile(r"[\x00-\x08\x0b-\x1f\x7f]")
+LONGEST_TEXT = 2000
+MOST_DIGITS = 12
+_MOST_SHOWN = 12
+_LARGE = 10**20
+CONTROL = r"[\x00-\x08\x0b-\x1f\x7f]"
 
 
 @dataclass(frozen=True)
@@ -41,23 +44,22 @@ class Table:
     def refuse(self, key: str, reason: str, remedy: str) -> NoReturn:
         """Raise a BriefError at a key of this table."""
         path = [part for part in (*self.path, key) if part != ""]
-        raise BriefError(self.file, self.line(key), _path_text(path), reason, remedy)
+        where = visible(_path_text(path))
+        raise BriefError(self.file, self.line(key), where, visible(reason), visible(remedy))
 
     def require_known(self, keys: Iterable[str], what: str = "key") -> None:
         """Refuse any entry whose key is not one of ``keys``, with the nearest valid key."""
         valid = list(keys)
         for name in self.entries:
             if name not in valid:
-                near = nearest(name, valid)
-                remedy = f"Did you mean {near}" if near else f"Valid here: {', '.join(valid[:12])}"
-                self.refuse(name, f"unknown {what}", remedy)
+                self.refuse(name, f"unknown {what}", _elsewhere(name) or _offer(name, valid, what))
 
     def require(self, keys: Keys) -> None:
         """Refuse unknown keys and the absence of required ones."""
         self.require_known(keys)
         for key in keys.values():
             if key.required and key.name not in self.entries:
-                self.refuse("", f'the key "{key.name}" is missing', f"Add it: {key.about[:-1]}")
+                self.refuse("", f'the key "{key.name}" is missing', f"Add {_described(key)}")
 
     def text(self, key: Key, default: str = "") -> str:
         """Return a text, checked against the choices and pattern of its key."""
@@ -65,34 +67,38 @@ class Table:
         if value is None:
             return default
         if not isinstance(value, str):
-            self.refuse(key.name, "this must be a text", f'Write {key.name} = "..."')
-        if len(value) > _LONGEST_TEXT:
+            self.refuse(key.name, "this must be a text", f"Write {key.name} = {_quoted(value)}")
+        if len(value) > LONGEST_TEXT:
             self.refuse(
-                key.name, f"the text has {len(value)} characters", f"Keep it below {_LONGEST_TEXT}"
+                key.name, f"the text has {len(value)} characters", f"Write at most {LONGEST_TEXT}"
             )
-        if _CONTROL.search(value):
+        if re.search(CONTROL, value):
             self.refuse(key.name, "the text holds a control character", "Remove it")
         if key.required and not value.strip():
-            self.refuse(key.name, "this is empty", f"State it: {key.about[:-1]}")
+            self.refuse(key.name, "this is empty", f"State {_described(key)}")
         if key.choices and value not in key.choices:
             near = nearest(value, key.choices)
             hint = f"Did you mean {near}? " if near else ""
             self.refuse(
                 key.name,
                 f'"{value}" is not one of the choices',
-                f"{hint}Choose {_either(key.choices)}",
+                f"{hint}Choose {either(key.choices)}",
             )
         pattern, example = _PATTERNS.get(key.what, ("", ""))
-        if pattern and not re.match(pattern, value):
+        if pattern and not re.fullmatch(pattern, value):
             self.refuse(key.name, f'"{value}" is not {example}', f"Correct {key.name}")
+        if key.what == "date" and not _in_calendar(value):
+            self.refuse(key.name, f'"{value}" is not in the calendar', f"Correct {key.name}")
         return value
 
     def digits(self, key: Key, default: int) -> int:
         """Return a number of significant digits."""
         value = self.entries.get(key.name, default)
-        if not isinstance(value, int) or isinstance(value, bool) or not 1 <= value <= _MOST_DIGITS:
+        if not isinstance(value, int) or isinstance(value, bool) or not 1 <= value <= MOST_DIGITS:
             self.refuse(
-                key.name, "this must be a whole number", f"Write 1 to {_MOST_DIGITS} without quotes"
+                key.name,
+                f"this must be a whole number from 1 to {MOST_DIGITS}",
+                f"Write {key.name} = {default}, without quotes",
             )
         return value
 
@@ -103,10 +109,14 @@ class Table:
             self.refuse(
                 key,
                 "a bare number has no unit and is not kept as typed",
-                f'Write it as text: "{value}" with its unit',
+                f"Write {key} = {_quoted(value)}, with the unit inside the quotes if it has one",
             )
         if not isinstance(value, str):
-            self.refuse(key, "this must be a number with a unit", 'Write "12.0 bar(g)" or the like')
+            self.refuse(
+                key,
+                "this must be a text of a number and a unit",
+                f'Write {key} = "...", with a number and its unit inside the quotes',
+            )
         try:
             return read_measured(value)
         except UnitError as problem:
@@ -120,7 +130,10 @@ class Table:
         """Return a table inside this one, empty if it is not there."""
         value = self.entries.get(key, {})
         if not isinstance(value, Mapping):
-            self.refuse(key, "this must be a table", f"Write a table [{key}]")
+            remedy = f"Write a table [{_path_text([*self.path, key])}]"
+            if self.path and self.path[0] != "stations":
+                remedy = f'Write "{key}" = {{ }} with its keys inside the braces'
+            self.refuse(key, "this must be a table", remedy)
         return Table(self.file, (*self.path, key), value, self.lines)
 
     def tables(self, key: str) -> Iterator[Table]:
@@ -147,8 +160,53 @@ def nearest(name: str, valid: Iterable[str]) -> str:
     return (folded or found or [""])[0]
 
 
-def _either(choices: tuple[str, ...]) -> str:
-    return f"{', '.join(choices[:-1])} or {choices[-1]}" if len(choices) > 1 else choices[0]
+def _offer(name: str, valid: list[str], what: str) -> str:
+    """The nearest valid name, or the first of them all."""
+    near = nearest(name, valid)
+    if near:
+        return f"Did you mean {near}? If not, remove this {what}"
+    more = " and others, see docs/brief.md" if len(valid) > _MOST_SHOWN else ""
+    return f"Valid here: {', '.join(valid[:_MOST_SHOWN])}{more}"
+
+
+def _elsewhere(name: str) -> str:
+    """Where a quantity belongs that stands in the wrong table; empty for other names."""
+    quantity = catalogue().get(name)
+    if quantity is None or quantity.kind is Kind.STATE:
+        return ""
+    if quantity.home == "station":
+        return "It is a quantity of a station or process: give it there"
+    return f"It is a quantity of the {quantity.home}: give it in [{quantity.home}]"
+
+
+def either(choices: Iterable[str]) -> str:
+    """Return choices as text in quotation marks, such as ``"a", "b" or "c"``."""
+    quoted = [f'"{choice}"' for choice in choices]
+    return f"{', '.join(quoted[:-1])} or {quoted[-1]}" if len(quoted) > 1 else quoted[0]
+
+
+def visible(text: str) -> str:
+    """Return a text with its unprintable characters written as escapes, fit for a terminal."""
+    return "".join(c if c.isprintable() else c.encode("unicode_escape").decode() for c in text)
+
+
+def _described(key: Key) -> str:
+    return f"{key.name}: {key.about[0].lower()}{key.about[1:-1]}"
+
+
+def _quoted(value: object) -> str:
+    """A bare number or date in quotes; dots for anything longer."""
+    if isinstance(value, float | date) or (isinstance(value, int) and abs(value) < _LARGE):
+        return f'"{value}"' if not isinstance(value, bool) else '"..."'
+    return '"..."'
+
+
+def _in_calendar(text: str) -> bool:
+    try:
+        date.fromisoformat(text)
+    except ValueError:
+        return False
+    return True
 
 
 def _path_text(path: list[str | int]) -> str:

@@ -4,23 +4,20 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from dataclasses import dataclass
-from fractions import Fraction
 
 from ..errors import UnitError
 from ..quantities import (
+    GAUGE_OF,
     Kind,
-    Measured,
     Quantity,
     Variable,
     catalogue,
-    quantity_stated,
+    quantity_given,
     read_measured,
 )
 from .form import Key, Keys
 from .model import Given, SameAs
 from .table import Table
-
-_PI = Fraction(355, 113)  # only to compare an angle with its bounds
 
 
 @dataclass(frozen=True)
@@ -67,12 +64,10 @@ def _same_as(entry: Table, place: str, key: Key, value_keys: Keys) -> SameAs:
             entry.refuse(name, "an equality has no " + name, f"Remove {name}")
     symbol, _, other = entry.text(value_keys["same_as"]).partition("@")
     known = catalogue().get(symbol)
-    if known is not None and known.dimension != catalogue()[key.name].dimension:
-        entry.refuse(
-            "same_as",
-            f"{key.name} and {symbol} have different dimensions",
-            "Name a quantity of the same dimension",
-        )
+    if known is not None:
+        _require_alike(entry, catalogue()[key.name], known)
+    if (symbol, other) == (key.name, place):
+        entry.refuse("same_as", "this equals itself", "Name another quantity, or give a value")
     return SameAs(
         variable=Variable(key.name, place),
         other=Variable(symbol, other),
@@ -81,13 +76,31 @@ def _same_as(entry: Table, place: str, key: Key, value_keys: Keys) -> SameAs:
     )
 
 
+def _require_alike(entry: Table, own: Quantity, other: Quantity) -> None:
+    """Only quantities of one dimension, datum and reference state can be equal."""
+    if other.kind is Kind.STATE:
+        entry.refuse("same_as", f"{other.symbol} is a state in words", "Name a quantity")
+    if other.dimension != own.dimension:
+        entry.refuse(
+            "same_as",
+            f"{own.symbol} and {other.symbol} have different dimensions",
+            "Name a quantity of the same dimension",
+        )
+    if (other.kind, other.reference) != (own.kind, own.reference):
+        entry.refuse(
+            "same_as",
+            f"{own.symbol} is the {own.title}, and {other.symbol} the {other.title}: "
+            "they differ in datum or reference state",
+            "Name a quantity that agrees in both",
+        )
+
+
 def _given(table: Table, key: str, quantity: Quantity, place: str, value_keys: Keys) -> Given:
     measured = table.measured(key)
     try:
-        stated = quantity_stated(quantity, measured)
+        stated = quantity_given(quantity, measured)
     except UnitError as problem:
         table.refuse_unit(key, problem)
-    _require_bounds(table, key, stated, measured)
     if not value_keys:
         return Given(Variable(stated.symbol, place), measured, "", "", "", table.line(key))
     return Given(
@@ -100,35 +113,22 @@ def _given(table: Table, key: str, quantity: Quantity, place: str, value_keys: K
     )
 
 
-def _require_bounds(table: Table, key: str, quantity: Quantity, measured: Measured) -> None:
-    value = measured.rational * (_PI if measured.unit.pi_power else 1)
-    if value < quantity.low or (quantity.low == 0 and value == 0):
-        bound = "above" if quantity.low == 0 else "at least"
-        limit = f"{bound} {_plain(quantity.low)} {quantity.unit}"
-    elif value > quantity.high:
-        limit = f"at most {_plain(quantity.high)} {quantity.unit}"
-    else:
-        return
-    table.refuse(
-        key,
-        f'"{measured.text}": {quantity.title} must be {limit}',
-        "Check the number and its unit",
-    )
-
-
-def _plain(value: Fraction) -> str:
-    return f"{float(value):g}"
-
-
 def _tolerance(table: Table, value_keys: Keys, quantity: Quantity) -> str:
     text = table.text(value_keys["tolerance"])
     if not text:
         return ""
     try:
-        unit = read_measured(text).unit
+        measured = read_measured(text)
     except UnitError as problem:
         table.refuse_unit("tolerance", problem)
+    unit = measured.unit
     percent = unit.name == "%"
+    if measured.number <= 0:
+        table.refuse(
+            "tolerance",
+            f'"{text}": a tolerance counts both ways and must be above 0',
+            "Give it without a sign",
+        )
     if unit.dimension != quantity.dimension and not percent:
         table.refuse(
             "tolerance",
@@ -146,8 +146,15 @@ def _tolerance(table: Table, value_keys: Keys, quantity: Quantity) -> str:
 
 def _refuse_twice(table: Table, given: list[Given]) -> None:
     """Gauge and absolute pressure of one place are one fact given twice."""
-    seen: dict[Variable, Given] = {}
+    absolute = {gauge: symbol for symbol, gauge in GAUGE_OF.items()}
+    seen: set[str] = set()
     for item in given:
-        if item.variable in seen:
-            table.refuse("", f"{item.variable} is given twice", "Give it once, in one of its units")
-        seen[item.variable] = item
+        symbol = absolute.get(item.variable.symbol, item.variable.symbol)
+        if symbol in seen:
+            table.refuse(
+                "",
+                f"the {catalogue()[symbol].title} is given twice, as {symbol} and as "
+                f"{GAUGE_OF[symbol]}",
+                "Give it once, gauge or absolute",
+            )
+        seen.add(symbol)

@@ -2,7 +2,14 @@
 
 from .catalogue import BAROMETRIC, GAUGE_OF, catalogue
 from .dimension import Dimension
-from .measured import Measured, find_unit, quantity_stated, read_measured
+from .measured import (
+    Measured,
+    default_unit,
+    find_unit,
+    quantity_given,
+    quantity_stated,
+    read_measured,
+)
 from .quantity import Kind, Notation, Quantity, Variable
 from .reference_states import REFERENCE_STATES, ReferenceState
 from .units import Unit, all_units, units_by_name
@@ -21,7 +28,9 @@ __all__ = [
     "Variable",
     "all_units",
     "catalogue",
+    "default_unit",
     "find_unit",
+    "quantity_given",
     "quantity_stated",
     "read_measured",
     "units_by_name",

@@ -9,13 +9,18 @@ from decimal import Decimal
 from fractions import Fraction
 
 from ..errors import UnitError
+from . import dimension as dim
 from .catalogue import BAROMETRIC, GAUGE_OF, catalogue
 from .quantity import Kind, Quantity
-from .units import REFUSED, Unit, units_by_name
+from .units import REFUSED, Unit, all_units, units_by_name
 
 _LONGEST_TEXT = 80
 _LARGEST_EXPONENT = 30
-_NUMBER = re.compile(r"\s*([+-]?(?:\d+\.?\d*|\.\d+)(?:[eE][+-]?\d{1,3})?)(.*)", re.DOTALL)
+_NUMBER = re.compile(
+    r"\s*([+-]?(?:[0-9]+\.?[0-9]*|\.[0-9]+)(?:[eE][+-]?[0-9]{1,3})?)(.*)", re.DOTALL
+)
+_GROUPING = re.compile(r"[\s,.'’_]+\d")
+_POWER = re.compile(r"\^|\*\*")
 _SPELLING = str.maketrans({"³": "3", "²": "2", "·": "*", "⋅": "*", "−": "-", "μ": "µ"})
 
 
@@ -65,7 +70,7 @@ def read_measured(text: str) -> Measured:
             'Write a number and a unit, such as "12.0 bar(g)"',
         )
     number, rest = match.groups()
-    if re.match(r"\s*[,'_ ]\s*\d", rest):
+    if _GROUPING.match(rest):
         raise UnitError(
             text,
             "only digits and one decimal point are read",
@@ -87,7 +92,7 @@ def find_unit(name: str, text: str = "") -> Unit:
     Raises:
         UnitError: if the unit is unknown or said for several units.
     """
-    wanted = re.sub(r"\s+", "", name.translate(_SPELLING))
+    wanted = _POWER.sub("", re.sub(r"\s+", "", name.translate(_SPELLING)))
     known = units_by_name()
     if wanted in known:
         return known[wanted]
@@ -97,8 +102,29 @@ def find_unit(name: str, text: str = "") -> Unit:
         raise UnitError(shown, reason, remedy)
     folded = sorted(unit for unit in known if unit.casefold() == wanted.casefold())
     near = folded or difflib.get_close_matches(wanted, sorted(known), n=3, cutoff=0.6)
-    remedy = f"Did you mean {' or '.join(near)}" if near else "See calcsheets units"
+    names = dict.fromkeys(known[spelling].name for spelling in near)
+    ask = f"Did you mean {' or '.join(names)}? " if near else ""
+    remedy = f"{ask}See calcsheets units"
     raise UnitError(shown, f'the unit "{wanted}" is not in the list of units', remedy)
+
+
+def default_unit(quantity: Quantity) -> Unit:
+    """Return the coherent SI unit of a quantity, with its datum or reference state."""
+    if quantity.kind in (Kind.ABSOLUTE, Kind.GAUGE, Kind.REFERENCE_VOLUME):
+        return next(
+            unit
+            for unit in all_units()
+            if unit.dimension == quantity.dimension
+            and (unit.kind, unit.reference) == (quantity.kind, quantity.reference)
+            and unit.factor == 1
+        )
+    return find_unit(quantity.unit)
+
+
+_STATED = {
+    dim.VOLUME: "Nm3, Sm3, SCF or m3(ANR)",
+    dim.VOLUME_FLOW: "Nm3/h, Sm3/h, SCFM or m3/h(ANR)",
+}
 
 
 def quantity_stated(quantity: Quantity, measured: Measured) -> Quantity:
@@ -117,19 +143,14 @@ def quantity_stated(quantity: Quantity, measured: Measured) -> Quantity:
     if unit.kind is Kind.REFERENCE_VOLUME:
         return _reference_quantity(quantity, measured)
     if unit.dimension != quantity.dimension:
-        raise UnitError(
-            text,
-            f"{quantity.title} ({quantity.symbol}) is measured in {quantity.unit}, "
-            f"and {unit.name} is a unit of another dimension",
-            f"Give it in {quantity.unit} or another unit of that dimension",
-        )
+        raise _dimension_error(quantity, measured)
     if quantity.kind in (Kind.ABSOLUTE, Kind.GAUGE, Kind.DIFFERENTIAL):
         return _pressure_quantity(quantity, measured)
     if quantity.kind is Kind.REFERENCE_VOLUME:
         raise UnitError(
             text,
-            f"{quantity.symbol} is a {quantity.title}, and {unit.name} states no reference state",
-            "Write the unit with its reference state, such as Nm3/h, Sm3/h, SCFM or m3/h(ANR)",
+            f"{quantity.symbol} is the {quantity.title}, and {unit.name} states no reference state",
+            f"Which state is meant? Write the unit with it, such as {_STATED[quantity.dimension]}",
         )
     if quantity.kind is Kind.LEVEL and unit.kind is Kind.DIFFERENCE:
         raise UnitError(
@@ -140,32 +161,80 @@ def quantity_stated(quantity: Quantity, measured: Measured) -> Quantity:
     return quantity
 
 
+def quantity_given(quantity: Quantity, measured: Measured) -> Quantity:
+    """Return the quantity that a text states, and require its value within physical bounds.
+
+    Raises:
+        UnitError: as ``quantity_stated``, or if the value is out of the bounds.
+    """
+    stated = quantity_stated(quantity, measured)
+    value = measured.rational * (_PI if measured.unit.pi_power else 1)
+    if value < stated.low or (stated.low == 0 and value == 0):
+        limit = f"{'above' if stated.low == 0 else 'at least'} {_bound(stated.low, stated)}"
+    elif value > stated.high:
+        limit = f"at most {_bound(stated.high, stated)}"
+    else:
+        return stated
+    raise UnitError(
+        measured.text,
+        f"{stated.title} ({stated.symbol}) must be {limit}",
+        "Check the number and its unit",
+    )
+
+
+_PI = Fraction(355, 113)  # only to compare an angle with its bounds
+
+
+def _bound(value: Fraction, quantity: Quantity) -> str:
+    number = f"{float(value):g}"
+    return number if quantity.unit == "1" else f"{number} {quantity.unit}"
+
+
+def _dimension_error(quantity: Quantity, measured: Measured) -> UnitError:
+    name = f"{quantity.title} ({quantity.symbol})"
+    typed, right = measured.unit.name, default_unit(quantity).name
+    if right == "1":
+        return UnitError(
+            measured.text,
+            f"{name} is a plain number, and {typed} is a unit",
+            "Give it without a unit, or in %",
+        )
+    reason = (
+        f"the unit is missing; {name} is measured in {right}"
+        if typed == "1"
+        else f"{name} is measured in {right}, and {typed} is a unit of another dimension"
+    )
+    return UnitError(measured.text, reason, f"Give it in {right} or another unit of that dimension")
+
+
+_DATUM = {Kind.ABSOLUTE: "(a)", Kind.GAUGE: "(g)", Kind.DIFFERENTIAL: ""}
+_WITH_ARTICLE = {
+    Kind.ABSOLUTE: "an absolute pressure",
+    Kind.GAUGE: "a gauge pressure",
+    Kind.DIFFERENTIAL: "a pressure difference",
+}
+
+
 def _pressure_quantity(quantity: Quantity, measured: Measured) -> Quantity:
     kind, name = measured.unit.kind, measured.unit.name
     bare = name.partition("(")[0]
-    if quantity.kind is Kind.DIFFERENTIAL:
-        if kind in (Kind.PLAIN, Kind.DIFFERENTIAL):
-            return quantity
-        raise UnitError(
-            measured.text,
-            f"{quantity.title} is a pressure difference, neither gauge nor absolute",
-            f"Write {bare}",
-        )
-    if kind is quantity.kind or (kind is Kind.PLAIN and quantity.symbol in BAROMETRIC):
+    if kind is quantity.kind:
+        return quantity
+    if kind is Kind.PLAIN and (quantity.kind is Kind.DIFFERENTIAL or quantity.symbol in BAROMETRIC):
         return quantity
     if kind is Kind.GAUGE and quantity.symbol in GAUGE_OF:
         return catalogue()[GAUGE_OF[quantity.symbol]]
+    title = f"{quantity.title} ({quantity.symbol})"
     if kind is Kind.PLAIN:
         raise UnitError(
             measured.text,
-            f"is this {quantity.title} gauge or absolute",
-            f"Write {bare}(g) or {bare}(a)",
+            f"{title} may be gauge or absolute",
+            f"Which is meant? Write {bare}(g) or {bare}(a)",
         )
     raise UnitError(
         measured.text,
-        f"{quantity.title} ({quantity.symbol}) is a {quantity.kind.value}, "
-        f"and {name} states a {kind.value}",
-        "Write the pressure with the datum that the quantity has",
+        f"{title} is {_WITH_ARTICLE[quantity.kind]}, and {name} states {_WITH_ARTICLE[kind]}",
+        f"Give the value in {bare}{_DATUM[quantity.kind]}",
     )
 
 
@@ -177,20 +246,20 @@ def _reference_quantity(quantity: Quantity, measured: Measured) -> Quantity:
     if quantity.kind is Kind.REFERENCE_VOLUME:
         if quantity.reference == unit.reference and quantity.dimension == unit.dimension:
             return quantity
+        volume = "q" if unit.dimension == dim.VOLUME_FLOW else "V"
+        other = catalogue()[f"{volume}_{unit.reference}"]
         raise UnitError(
             measured.text,
-            f"{quantity.symbol} is a {quantity.title}, and {unit.name} has another meaning",
-            f"Give {_VOLUMES_OF_DIMENSION[unit.name.count('/') > 0]}_{unit.reference} instead",
+            f"{quantity.symbol} is the {quantity.title}, and {unit.name} states the {other.title}",
+            f"Give it as {other.symbol}, or in {default_unit(quantity).name}",
         )
     stated = _VOLUMES_OF.get(quantity.symbol)
     found = catalogue().get(f"{stated}_{unit.reference}") if stated else None
     if found is None or found.dimension != unit.dimension:
         raise UnitError(
             measured.text,
-            f"{unit.name} is a volume at a reference state and does not state {quantity.title}",
-            f"Give {quantity.symbol} in {quantity.unit} or another unit of that dimension",
+            f"{unit.name} counts gas at a reference state and does not state {quantity.title}",
+            f"Give {quantity.symbol} in {default_unit(quantity).name} "
+            "or another unit of that dimension",
         )
     return found
-
-
-_VOLUMES_OF_DIMENSION = {True: "q", False: "V"}
