@@ -197,10 +197,20 @@ def _flow_aliases(name: str, aliases: tuple[str, ...], time: str) -> Iterator[st
 
 
 def _plain_units() -> Iterator[Unit]:
+    yield from _geometric_units()
+    yield from _mechanical_units()
+    yield from _rates()
+    yield from _specific_units()
+    yield Unit("1", Fraction(1), dim.ONE, aliases=("",), pint="dimensionless")
+    yield Unit("%", Fraction(1, 100), dim.ONE, pint="percent")
+    yield Unit("rad", Fraction(1), dim.ONE, pint="radian")
+    yield Unit("°", Fraction(1, 180), dim.ONE, aliases=("deg",), pi_power=1, pint="degree")
+
+
+def _geometric_units() -> Iterator[Unit]:
     one = Fraction(1)
     milli = Fraction(1, 1000)
     u = Unit
-    # length, area, volume
     yield u("m", one, dim.LENGTH, pint="meter")
     yield u("mm", milli, dim.LENGTH, pint="millimeter")
     yield u("cm", Fraction(1, 100), dim.LENGTH, pint="centimeter")
@@ -220,13 +230,18 @@ def _plain_units() -> Iterator[Unit]:
     yield u("ft3", _FOOT**3, dim.VOLUME, aliases=("cuft",), pint="foot**3")
     yield u("in3", _INCH**3, dim.VOLUME, pint="inch**3")
     yield u("gal", _GALLON, dim.VOLUME, aliases=("gal(US)",), pint="US_liquid_gallon")
-    # time
+
+
+def _mechanical_units() -> Iterator[Unit]:
+    """Time, mass, amount, force, energy and power."""
+    one = Fraction(1)
+    milli = Fraction(1, 1000)
+    u = Unit
     yield u("s", one, dim.TIME, aliases=("sec",), pint="second")
     yield u("ms", milli, dim.TIME, pint="millisecond")
     yield u("min", _MINUTE, dim.TIME, pint="minute")
     yield u("h", _HOUR, dim.TIME, aliases=("hr",), pint="hour")
     yield u("d", _DAY, dim.TIME, aliases=("day",), pint="day")
-    # mass and amount
     yield u("kg", one, dim.MASS, pint="kilogram")
     yield u("g", milli, dim.MASS, pint="gram")
     yield u("t", Fraction(1000), dim.MASS, aliases=("tonne",), pint="metric_ton")
@@ -235,7 +250,6 @@ def _plain_units() -> Iterator[Unit]:
     yield u("mol", one, dim.AMOUNT, pint="mole")
     yield u("kmol", Fraction(1000), dim.AMOUNT, pint="kilomole")
     yield u("lbmol", 1000 * _POUND, dim.AMOUNT, pint="453.59237*mole")
-    # force, energy, power
     yield u("N", one, dim.FORCE, pint="newton")
     yield u("kN", Fraction(1000), dim.FORCE, pint="kilonewton")
     yield u("lbf", _POUND_FORCE, dim.FORCE, pint="pound_force")
@@ -250,13 +264,6 @@ def _plain_units() -> Iterator[Unit]:
     yield u("MW", Fraction(10**6), dim.POWER, pint="megawatt")
     yield u("hp", 550 * _FOOT * _POUND_FORCE, dim.POWER, pint="550*foot*pound_force/second")
     yield u("Btu/h", _BTU / _HOUR, dim.POWER, aliases=("BTU/h",), pint="Btu_it/hour")
-    yield from _rates()
-    yield from _specific_units()
-    # pure numbers and angles
-    yield u("1", one, dim.ONE, aliases=("",), pint="dimensionless")
-    yield u("%", Fraction(1, 100), dim.ONE, pint="percent")
-    yield u("rad", one, dim.ONE, pint="radian")
-    yield u("°", Fraction(1, 180), dim.ONE, aliases=("deg",), pi_power=1, pint="degree")
 
 
 def _rates() -> Iterator[Unit]:
