@@ -109,14 +109,17 @@ def find_unit(name: str, text: str = "") -> Unit:
 
 
 def default_unit(quantity: Quantity) -> Unit:
-    """Return the coherent SI unit of a quantity, with its datum or reference state."""
+    """Return the unit in which a quantity is printed where none is asked for.
+
+    It is the coherent SI unit with the datum of the quantity; a volume at a reference state
+    takes the first unit of the list that states it.
+    """
     if quantity.kind in (Kind.ABSOLUTE, Kind.GAUGE, Kind.REFERENCE_VOLUME):
         return next(
             unit
             for unit in all_units()
             if unit.dimension == quantity.dimension
             and (unit.kind, unit.reference) == (quantity.kind, quantity.reference)
-            and unit.factor == 1
         )
     return find_unit(quantity.unit)
 
