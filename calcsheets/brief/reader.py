@@ -139,7 +139,8 @@ def _parse_toml(text: str, file: str) -> Table:
     except (tomllib.TOMLDecodeError, RecursionError, ValueError) as problem:
         found = re.search(r"\(at line (\d+), column (\d+)\)", str(problem))
         line = int(found.group(1)) if found else text.count("\n") + 1
-        reason = visible(_toml_reason(str(problem).partition(" (at")[0]))
+        said = "" if isinstance(problem, RecursionError) else str(problem).partition(" (at")[0]
+        reason = visible(_toml_reason(said))
         raise BriefError(
             file, line, "", f"this is not TOML: {reason}", "Correct the text at this line"
         ) from problem
