@@ -45,7 +45,7 @@ Keys = Mapping[str, Key]
 
 @dataclass(frozen=True)
 class Form:
-    """All tables of a brief."""
+    """All tables of a brief; those in ``required`` must be there."""
 
     calculation: Keys
     site: Keys
@@ -57,6 +57,7 @@ class Form:
     assumption: Keys
     reference: Keys
     caution: Keys
+    required: tuple[str, ...] = ("calculation", "gas", "wanted")
     tables: tuple[str, ...] = field(
         default=(
             "calculation",

@@ -15,7 +15,7 @@ from .table import Table
 from .values import Stated, read_values
 
 _LIBRARY_STATUS = "verified"
-_BALANCE = "balance"
+BALANCE = "balance"
 
 
 def read_gas(table: Table, form: Form, places: tuple[str, ...]) -> tuple[GasStatement, Stated]:
@@ -125,7 +125,7 @@ def _mixture(
 
 def _fraction(table: Table, key: str, gas: Gas, value: Decimal, basis: str) -> Given:
     symbol = "x" if basis == "mole" else "w"
-    source = "the brief, as the balance to 1" if table.entries[key] == _BALANCE else "the brief"
+    source = "the brief, as the balance to 1" if table.entries[key] == BALANCE else "the brief"
     return Given(
         Variable(symbol, gas.key), read_measured(str(value)), source, "", "", table.line(key)
     )
@@ -139,7 +139,7 @@ def _fractions(table: Table) -> Mapping[str, Decimal]:
     for name, text in table.entries.items():
         if not isinstance(text, str):
             table.refuse(name, "a fraction must be a text", f'Write it as "{text}"')
-        found[name] = None if text == _BALANCE else _decimal(table, name, text)
+        found[name] = None if text == BALANCE else _decimal(table, name, text)
     total = sum((value for value in found.values() if value is not None), Decimal(0))
     missing = [name for name, value in found.items() if value is None]
     if len(missing) > 1:

@@ -93,7 +93,7 @@ def parse_brief(text: str, file: str = "brief") -> Brief:
     root = _parse_toml(text, file)
     form = brief_form()
     root.require_known(form.tables, "table")
-    for name in ("calculation", "gas", "wanted"):
+    for name in form.required:
         if name not in root.entries:
             root.refuse("", f"the table [{name}] is missing", "Add it")
     calculation = root.table("calculation")

@@ -14,7 +14,7 @@ from .catalogue import BAROMETRIC, GAUGE_OF, catalogue
 from .quantity import Kind, Quantity
 from .units import REFUSED, Unit, all_units, units_by_name
 
-_LONGEST_TEXT = 80
+LONGEST_TEXT = 80
 _LARGEST_EXPONENT = 30
 _NUMBER = re.compile(
     r"\s*([+-]?(?:[0-9]+\.?[0-9]*|\.[0-9]+)(?:[eE][+-]?[0-9]{1,3})?)(.*)", re.DOTALL
@@ -56,10 +56,10 @@ def read_measured(text: str) -> Measured:
     Raises:
         UnitError: if there is no number, or the unit is unknown or ambiguous.
     """
-    if len(text) > _LONGEST_TEXT:
+    if len(text) > LONGEST_TEXT:
         raise UnitError(
             text[:20] + "...",
-            f"a value with its unit has at most {_LONGEST_TEXT} characters",
+            f"a value with its unit has at most {LONGEST_TEXT} characters",
             "Write only a number and a unit",
         )
     match = _NUMBER.fullmatch(text.translate(_SPELLING))
