@@ -9,7 +9,7 @@ from fractions import Fraction
 from types import MappingProxyType
 from typing import Any
 
-from ..expressions import Condition, Equation, Symbol
+from ..expressions import Condition, Equation, Expr, Sum, Symbol
 from ..record import InputRecord, Record, ResultRecord, StepRecord
 from .decimals import evaluate_decimal
 
@@ -103,10 +103,16 @@ def _check_equation(
     """The value is put into the published form; its sensitivity sets what counts as equal."""
     left = evaluate_decimal(published.left, values)
     right = evaluate_decimal(published.right, values)
-    scale = abs(left) + abs(right)
+    scale = _size(published.left, values) + _size(published.right, values)
     difference = 0.0 if scale == 0 else float(abs(left - right) / scale)
     verdict = "passed" if difference <= _TOLERANCE else "failed"
     return Finding(part, key, verdict, f"sides of the published form differ by {difference:.1e}")
+
+
+def _size(side: Expr, values: Mapping[Symbol, Any]) -> Any:
+    """Added terms count each, so that a side that cancels to zero still has a size."""
+    terms = side.terms if isinstance(side, Sum) else (side,)
+    return sum(abs(evaluate_decimal(term, values)) for term in terms)
 
 
 def _check_result(record: Record, result: ResultRecord) -> Finding:

@@ -23,10 +23,12 @@ from ..solving import (
     StepOutcome,
     compare,
     decimal_bounds,
+    double_errors,
     evaluate,
     exact_ball,
     isolate,
     midpoint,
+    size_of,
     working_precision,
 )
 from .checks import consistency_checks
@@ -54,6 +56,7 @@ from .model import (
     SourceRecord,
     StepRecord,
 )
+from .ranges import range_cautions
 
 _MOST_DIGITS = 15
 
@@ -69,8 +72,9 @@ def build_record(outcome: Outcome, library_digest: str, changed: tuple[str, ...]
     Raises:
         ContradictoryInputs: if a relation that was not needed disagrees with the values.
     """
+    errors = double_errors(outcome)
     with working_precision():
-        return _Builder(outcome).record(library_digest, changed)
+        return _Builder(outcome, errors).record(library_digest, changed)
 
 
 def program_name() -> str:
@@ -84,6 +88,7 @@ def program_name() -> str:
 @dataclass(frozen=True)
 class _Builder:
     outcome: Outcome
+    double_errors: Mapping[Variable, float]
 
     @property
     def problem(self) -> Problem:
@@ -134,6 +139,7 @@ class _Builder:
                 dict.fromkeys(
                     (
                         *self.brief.cautions,
+                        *range_cautions(self.outcome),
                         *(_sentence(caution) for caution in self.brief.gas.cautions),
                         *(caution for relation in relations for caution in relation.cautions),
                     )
@@ -206,6 +212,7 @@ class _Builder:
             lower=lower,
             upper=upper,
             certified_digits=certified_digits(lower, upper),
+            double_error=self.double_errors[step.edge.target],
             residual=self._relative_residual(source, solution),
             limits=tuple(self._limits(source)),
             branch=solution.branch,
@@ -241,6 +248,7 @@ class _Builder:
             lower="",
             upper="",
             certified_digits=0,
+            double_error=0.0,
             residual=0.0,
             limits=(),
             branch="",
@@ -289,12 +297,8 @@ class _Builder:
         return tuple(found)
 
     def _relative_residual(self, source: Instance, solution: Solution) -> float:
-        values = self._values(source, source.relation.symbols)
-        scale = abs(evaluate(source.relation.published.left, values)) + abs(
-            evaluate(source.relation.published.right, values)
-        )
-        bound = abs(solution.residual)
-        return 0.0 if scale == 0 else float((bound / scale).upper())
+        scale = size_of(source.relation, self._values(source, source.relation.symbols))
+        return 0.0 if scale == 0 else float((abs(solution.residual) / scale).upper())
 
     def _values(
         self, source: Instance | RegimeInstance, symbols: Iterable[Symbol]
@@ -366,7 +370,12 @@ class _Builder:
             used_as=wanted.used_as,
             otherwise=wanted.otherwise,
             within_limits=self._within_limits(wanted.variable, where, steps),
+            double_error=self._error_in_unit(wanted),
         )
+
+    def _error_in_unit(self, wanted: Wanted) -> float:
+        error = self.double_errors.get(wanted.variable, 0.0)
+        return 0.0 if wanted.unit is None else error / float(wanted.unit.factor)
 
     def _criteria(self, wanted: Wanted, value: Ball | None) -> Iterator[CriterionRecord]:
         unit = wanted.unit

@@ -216,6 +216,8 @@ class StepRecord:
         lower: decimal below which the exact value cannot lie.
         upper: decimal above which it cannot lie.
         certified_digits: significant digits that the enclosure certifies, at most 15.
+        double_error: bound on the absolute error when the steps are computed in doubles, as
+            a workbook does.
         residual: bound on the relative difference of both sides of the published form.
         limits: limits of the relation.
         branch: branch on which the value lies, empty for none.
@@ -243,6 +245,7 @@ class StepRecord:
     lower: str
     upper: str
     certified_digits: int
+    double_error: float
     residual: float
     limits: tuple[LimitRecord, ...]
     branch: str
@@ -302,6 +305,7 @@ class ResultRecord:
         used_as: ``minimum``, ``maximum``, ``best estimate`` or empty.
         otherwise: what a missed criterion means, ``fail`` or ``caution``.
         within_limits: whether every step behind it is within the limits of its relation.
+        double_error: bound on the absolute error of ``value`` in a workbook.
     """
 
     number: int
@@ -322,6 +326,7 @@ class ResultRecord:
     used_as: str
     otherwise: str
     within_limits: bool
+    double_error: float
 
     @property
     def verdict(self) -> str:

@@ -178,6 +178,22 @@ _CHANGE = (
         assumptions=(PERFECT, CONSTANT_HEATS, REVERSIBLE),
     ),
     Relation(
+        "isentropic_boundary_work",
+        "Isentropic change: boundary work of a fixed mass",
+        w_b.equals(c_v * (T_1 - T_2)),
+        derived("First law for a fixed mass without heat exchange"),
+        (ISENTROPIC,),
+        assumptions=(PERFECT, CONSTANT_HEATS, REVERSIBLE),
+    ),
+    Relation(
+        "isentropic_shaft_work",
+        "Isentropic change: shaft work of a steady stream at equal velocities",
+        w_s.equals(c_p * (T_1 - T_2)),
+        derived("First law for a steady stream without heat exchange"),
+        (ISENTROPIC,),
+        assumptions=(PERFECT, CONSTANT_HEATS, REVERSIBLE, "equal velocities and heights"),
+    ),
+    Relation(
         "polytropic_p_rho",
         "Polytropic change: pressure and density",
         (p_2 / p_1).equals((rho_2 / rho_1) ** n),

@@ -126,8 +126,8 @@ def _power(base: Ball, exponent: Expr, values: Mapping[Symbol, Ball]) -> Ball:
 
 
 def midpoint(ball: Ball) -> float:
-    """Return the double nearest to the middle of a ball."""
-    return float(ball.mid())
+    """Return the double nearest to the middle of a ball; zero if the ball holds it."""
+    return 0.0 if ball.contains(0) else float(ball.mid())
 
 
 def decimal_bounds(ball: Ball, digits: int = 25) -> tuple[str, str]:

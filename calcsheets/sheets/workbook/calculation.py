@@ -9,7 +9,7 @@ from ...record import LimitRecord, Record, StepRecord
 from ..typesetting import plain_text, symbol_text, unit_text
 from .cells import CALCULATION, FIRST_ROW, STEP_VALUE, Cells, reference
 from .formula import comparison, formula
-from .page import Column, Page
+from .page import Column, Page, double_size
 
 _COLUMNS = (
     Column("No.", 5),
@@ -76,12 +76,13 @@ def _row(
         page.changed(row, CHANGE, value, issued)
         return
     found = step.value or 0.0
+    size = double_size(found, step.double_error)
     page.formula(
-        row, STEP_VALUE, _value_formula(step, cells, roots), found, page.value_style(found)
+        row, STEP_VALUE, _value_formula(step, cells, roots), found, page.value_style(found), size
     )
     _write_limits(page, row, step, cells)
     page.value(row, _ISSUED, found)
-    page.change(row, CHANGE, value, issued)
+    page.change(row, CHANGE, value, issued, size)
 
 
 def _solved_text(step: StepRecord) -> str:

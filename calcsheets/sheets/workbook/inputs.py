@@ -57,7 +57,7 @@ def _row(page: Page, book: Any, row: int, item: InputRecord) -> None:
     page.value(row, 11, item.value)
     value = reference(page.name, row, INPUT_SI)
     issued = reference(page.name, row, 11)
-    page.change(row, CHANGE, value, issued)
+    page.change(row, CHANGE, value, issued, abs(item.value))
 
 
 def _typed_style(book: Any, item: InputRecord) -> Any:

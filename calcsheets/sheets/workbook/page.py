@@ -95,7 +95,8 @@ class FormulaCell:
         row: row, from 0.
         column: column, from 0.
         value: the value that was stored with it.
-        scale: size against which a difference counts, where the value itself may be zero.
+        scale: size against which a difference counts, where the value itself may be zero, or
+            is known in double arithmetic to fewer digits.
     """
 
     sheet: str
@@ -103,6 +104,16 @@ class FormulaCell:
     column: int
     value: float | str
     scale: float
+
+
+def double_size(value: float, error: float) -> float:
+    """Return the size against which a difference of 1e-12 is no more than double arithmetic errs.
+
+    Args:
+        value: the value.
+        error: bound on its absolute error in double arithmetic.
+    """
+    return max(abs(value), error * 1e12)
 
 
 class Page:
@@ -178,9 +189,10 @@ class Page:
         self.sheet.write_formula(row, column, f"={formula}", style or self.styles.number, value)
         self.formulas.append(FormulaCell(self.name, row, column, value, scale))
 
-    def change(self, row: int, column: int, value: str, issued: str) -> None:
-        """Write by how much a cell differs from the value as issued."""
-        change = f"ABS({value}-{issued})/MAX(ABS({issued}),1E-300)"
+    def change(self, row: int, column: int, value: str, issued: str, size: float) -> None:
+        """Write by how much a cell differs from the value as issued, over its size."""
+        over = repr(max(size, 1e-300)).replace("e", "E")
+        change = f"ABS({value}-{issued})/{over}"
         self.formula(row, column, change, 0.0, self.styles.change, scale=1.0)
 
     def changed(self, row: int, column: int, value: str, issued: str) -> None:

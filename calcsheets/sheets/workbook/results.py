@@ -8,7 +8,7 @@ from ...record import CriterionRecord, Record, ResultRecord
 from ..typesetting import symbol_text, unit_text
 from .cells import FIRST_ROW, RESULT_VALUE, RESULTS, Cells, reference
 from .formula import exact_number
-from .page import Column, Page
+from .page import Column, Page, double_size
 
 _COLUMNS = (
     Column("No.", 5),
@@ -58,9 +58,10 @@ def _row(page: Page, row: int, result: ResultRecord, cells: Cells) -> None:
             page.text(row, column, "")
         return
     style = page.value_style(result.value, result.digits)
-    page.formula(row, RESULT_VALUE, _in_unit(source, result), result.value, style)
+    size = double_size(result.value, result.double_error)
+    page.formula(row, RESULT_VALUE, _in_unit(source, result), result.value, style, size)
     page.value(row, _ISSUED, result.value, result.digits)
-    page.change(row, CHANGE, value, issued)
+    page.change(row, CHANGE, value, issued, size)
     _write_criterion(page, row, result, value)
 
 
