@@ -9,7 +9,8 @@ from pathlib import Path
 from typing import Any, Protocol
 
 from ..errors import CheckError
-from ..sheets.workbook import DIFFERENCE_FORMAT
+from ..record import Record
+from ..sheets.workbook import make_workbook
 from .findings import Finding
 
 ENGINE = "IronCalc"
@@ -53,13 +54,10 @@ def require_same_values(workbook: bytes, formulas: Iterable[StoredFormula]) -> i
     Raises:
         CheckError: if one differs by more than ``LARGEST_DIFFERENCE``.
     """
-    model = recalculated(workbook)
-    numbers = {
-        sheet["name"]: index for index, sheet in enumerate(model.get_worksheets_properties())
-    }
+    engine = _Engine(workbook)
     count = 0
     for cell in formulas:
-        found = model.get_cell_value(numbers[cell.sheet], cell.row + 1, cell.column + 1)
+        found = engine.value(cell)
         if not _same(cell.value, found, cell.scale):
             raise CheckError(
                 ENGINE, f"{cell.sheet}, row {cell.row + 1}, column {cell.column + 1}",
@@ -87,37 +85,56 @@ def _same(stored: object, found: object, scale: float) -> bool:
     return abs(found - stored) <= LARGEST_DIFFERENCE * max(abs(stored), scale)
 
 
-def check_workbook(workbook: bytes) -> tuple[Finding, ...]:
-    """Compare every value stored in a workbook file with what the second engine finds.
+def check_workbook(workbook: bytes, record: Record) -> tuple[Finding, ...]:
+    """Compare a workbook file, as it now stands, with its record and with a second engine.
 
     Args:
-        workbook: content of the file, as it now stands.
+        workbook: content of the file.
+        record: the record that it was made from.
 
     Returns:
-        One finding for each sheet with formulas.
+        One finding for each sheet: its formulas are those that were made, the values stored
+        are those of the record, and the second engine finds the same.
     """
     import openpyxl
 
+    expected = make_workbook(record)
+    made = openpyxl.load_workbook(io.BytesIO(expected.content))
     formulas = openpyxl.load_workbook(io.BytesIO(workbook))
     stored = openpyxl.load_workbook(io.BytesIO(workbook), data_only=True)
-    model = recalculated(workbook)
-    findings = []
-    for index, sheet in enumerate(formulas):
-        cells = [c for row in sheet.iter_rows() for c in row if c.data_type == "f"]
-        different = [
-            cell.coordinate
-            for cell in cells
-            if not _same(
-                stored[sheet.title][cell.coordinate].value,
-                model.get_cell_value(index, cell.row, cell.column),
-                1.0 if cell.number_format == DIFFERENCE_FORMAT else 0.0,
-            )
-        ]
-        if not cells:
+    engine = _Engine(workbook)
+    problems: dict[str, list[str]] = {cell.sheet: [] for cell in expected.formulas}
+    for cell in expected.formulas:
+        where = f"row {cell.row + 1}, column {cell.column + 1}"
+        if cell.sheet not in formulas.sheetnames:
+            problems[cell.sheet].append(f"{where}: the sheet is missing")
             continue
-        verdict = "failed" if different else "passed"
-        reason = f"{ENGINE} finds the same in {len(cells) - len(different)} of {len(cells)} cells"
-        if different:
-            reason += f"; other values in {', '.join(different[:5])}"
-        findings.append(Finding(f"sheet {sheet.title}", "", verdict, reason))
-    return tuple(findings)
+        place = {"row": cell.row + 1, "column": cell.column + 1}
+        if formulas[cell.sheet].cell(**place).value != made[cell.sheet].cell(**place).value:
+            problems[cell.sheet].append(f"{where}: another formula than was made")
+        elif not _same(cell.value, stored[cell.sheet].cell(**place).value, cell.scale):
+            problems[cell.sheet].append(f"{where}: another value stored than in the record")
+        elif not _same(cell.value, engine.value(cell), cell.scale):
+            problems[cell.sheet].append(f"{where}: {ENGINE} finds {engine.value(cell)}")
+    return tuple(_finding(sheet, found) for sheet, found in problems.items())
+
+
+def _finding(sheet: str, problems: list[str]) -> Finding:
+    reason = f"formulas as made, values as in the record, {ENGINE} finds the same"
+    if problems:
+        more = f"; {len(problems) - 3} more" if len(problems) > 3 else ""
+        reason = "; ".join(problems[:3]) + more
+    return Finding(f"sheet {sheet}", "", "failed" if problems else "passed", reason)
+
+
+class _Engine:
+    """A workbook recalculated in the second engine."""
+
+    def __init__(self, workbook: bytes) -> None:
+        self._model = recalculated(workbook)
+        names = [sheet["name"] for sheet in self._model.get_worksheets_properties()]
+        self._numbers = {name: index for index, name in enumerate(names)}
+
+    def value(self, cell: StoredFormula) -> Any:
+        """Return the value of a cell."""
+        return self._model.get_cell_value(self._numbers[cell.sheet], cell.row + 1, cell.column + 1)

@@ -18,7 +18,7 @@ def check(folder: Path, json: bool) -> int:
     record_file, workbook_file = _files(folder)
     with working("checking"):
         record = read_record(record_file.read_bytes())
-        findings = (*check_record(record), *check_workbook(workbook_file.read_bytes()))
+        findings = (*check_record(record), *check_workbook(workbook_file.read_bytes(), record))
     failed = [finding for finding in findings if finding.verdict != "passed"]
     if json:
         print_json({"digest": record.digest, "findings": [_facts(f) for f in findings]})

@@ -1,6 +1,6 @@
 """The live workbook."""
 
 from .book import Workbook, make_workbook
-from .page import DIFFERENCE_FORMAT, FormulaCell
+from .page import FormulaCell
 
-__all__ = ["DIFFERENCE_FORMAT", "FormulaCell", "Workbook", "make_workbook"]
+__all__ = ["FormulaCell", "Workbook", "make_workbook"]

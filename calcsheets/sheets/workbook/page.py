@@ -11,9 +11,6 @@ from typing import Any
 from ...record import Record
 from .cells import FIRST_ROW
 
-DIFFERENCE_FORMAT = "0.0E+00"
-"""Number format of cells that hold a relative difference and may be zero."""
-
 VALUE_DIGITS = 8
 _CHARACTERS_PER_WIDTH = 1.05  # characters of the sheet's font in one unit of column width
 _LINE_HEIGHT = 12  # points
@@ -50,7 +47,7 @@ def make_styles(book: Any) -> Styles:
         text=book.add_format(cell),
         strong=book.add_format({**cell, "bold": True}),
         number=book.add_format({**cell, "num_format": "General", "align": "right"}),
-        change=book.add_format({**cell, "num_format": DIFFERENCE_FORMAT, "align": "right"}),
+        change=book.add_format({**cell, "num_format": "0.0E+00", "align": "right"}),
     )
 
 
