@@ -20,6 +20,7 @@ _NUMBER = re.compile(
     r"\s*([+-]?(?:[0-9]+\.?[0-9]*|\.[0-9]+)(?:[eE][+-]?[0-9]{1,3})?)(.*)", re.DOTALL
 )
 _GROUPING = re.compile(r"[\s,.'’_]+\d")
+_BLANK_PRODUCT = re.compile(r"(?<=[a-z0-9])\s+(?=[A-Z])")  # as in J/(kg K)
 _POWER = re.compile(r"\^|\*\*")
 _SPELLING = str.maketrans({"³": "3", "²": "2", "·": "*", "⋅": "*", "−": "-", "μ": "µ"})
 
@@ -94,8 +95,10 @@ def find_unit(name: str, text: str = "") -> Unit:
     """
     wanted = _POWER.sub("", re.sub(r"\s+", "", name.translate(_SPELLING)))
     known = units_by_name()
-    if wanted in known:
-        return known[wanted]
+    product = _BLANK_PRODUCT.sub("*", name.strip().translate(_SPELLING))
+    for spelling in (wanted, _POWER.sub("", product)):
+        if spelling in known:
+            return known[spelling]
     shown = text or name
     if wanted in REFUSED:
         reason, remedy = REFUSED[wanted]

@@ -72,17 +72,17 @@ _PRESSURES: tuple[tuple[str, Fraction, tuple[str, ...], str], ...] = (
     ("bar", Fraction(10**5), (), "bar"),
     ("psi", _PSI, ("lbf/in2",), "pound_force_per_square_inch"),
     ("psf", _POUND_FORCE / _FOOT**2, ("lbf/ft2",), "force_pound/foot**2"),
-    ("ksi", 1000 * _PSI, (), "1000*pound_force_per_square_inch"),
+    ("ksi", 1000 * _PSI, (), "kip_per_square_inch"),
     ("atm", Fraction(101325), (), "standard_atmosphere"),
     ("at", _G_N * 10**4, ("kgf/cm2",), "technical_atmosphere"),
-    ("mmHg", _MMHG, (), "133.322387415*pascal"),
+    ("mmHg", _MMHG, (), "mmHg"),
     ("Torr", Fraction(101325, 760), ("torr",), "torr"),
-    ("inHg", _MMHG * _INCH * 1000, (), "25.4*133.322387415*pascal"),
-    ("mmH2O", _MMH2O, ("mmWC", "mmwc"), "9.80665*pascal"),
-    ("cmH2O", 10 * _MMH2O, (), "98.0665*pascal"),
-    ("mH2O", 1000 * _MMH2O, (), "9806.65*pascal"),
-    ("inH2O", _MMH2O * _INCH * 1000, ("inWC", "inwc"), "25.4*9.80665*pascal"),
-    ("ftH2O", _MMH2O * _FOOT * 1000, (), "304.8*9.80665*pascal"),
+    ("inHg", _MMHG * _INCH * 1000, (), "inHg"),
+    ("mmH2O", _MMH2O, ("mmWC", "mmwc"), "mmH2O"),
+    ("cmH2O", 10 * _MMH2O, (), "cmH2O"),
+    ("mH2O", 1000 * _MMH2O, (), "mH2O"),
+    ("inH2O", _MMH2O * _INCH * 1000, ("inWC", "inwc"), "inH2O"),
+    ("ftH2O", _MMH2O * _FOOT * 1000, (), "ftH2O"),
 )
 _PRESSURE_KINDS = (
     ("(a)", ("a", "(abs)", " abs"), Kind.ABSOLUTE),
@@ -158,13 +158,15 @@ def _reference_volume_units() -> Iterator[Unit]:
     for state, name, factor, aliases, pint in bases:
         yield Unit(name, factor, dim.VOLUME, kind, aliases, pint=pint, reference=state)
         for time, seconds in _VOLUME_TIMES:
-            spelled = tuple(_flow_aliases(name, aliases, time))
+            flow = _flow_name(name, time)
+            spelled = dict.fromkeys(_flow_aliases(name, aliases, time))
+            spelled.pop(flow, None)
             yield Unit(
-                _flow_name(name, time),
+                flow,
                 factor / seconds,
                 dim.VOLUME_FLOW,
                 kind,
-                spelled,
+                tuple(spelled),
                 pint=f"{pint}/{_PINT_TIMES[time]}",
                 reference=state,
             )
@@ -249,7 +251,7 @@ def _mechanical_units() -> Iterator[Unit]:
     yield u("slug", _SLUG, dim.MASS, pint="slug")
     yield u("mol", one, dim.AMOUNT, pint="mole")
     yield u("kmol", Fraction(1000), dim.AMOUNT, pint="kilomole")
-    yield u("lbmol", 1000 * _POUND, dim.AMOUNT, pint="453.59237*mole")
+    yield u("lbmol", 1000 * _POUND, dim.AMOUNT, pint="pound*mole/gram")
     yield u("N", one, dim.FORCE, pint="newton")
     yield u("kN", Fraction(1000), dim.FORCE, pint="kilonewton")
     yield u("lbf", _POUND_FORCE, dim.FORCE, pint="pound_force")
@@ -262,7 +264,7 @@ def _mechanical_units() -> Iterator[Unit]:
     yield u("W", one, dim.POWER, pint="watt")
     yield u("kW", Fraction(1000), dim.POWER, pint="kilowatt")
     yield u("MW", Fraction(10**6), dim.POWER, pint="megawatt")
-    yield u("hp", 550 * _FOOT * _POUND_FORCE, dim.POWER, pint="550*foot*pound_force/second")
+    yield u("hp", 550 * _FOOT * _POUND_FORCE, dim.POWER, pint="horsepower")
     yield u("Btu/h", _BTU / _HOUR, dim.POWER, aliases=("BTU/h",), pint="Btu_it/hour")
 
 
@@ -312,7 +314,7 @@ def _rates() -> Iterator[Unit]:
             f"lbmol/{time}",
             1000 * _POUND / seconds,
             dim.AMOUNT_FLOW,
-            pint=f"453.59237*mole/{per}",
+            pint=f"pound*mole/gram/{per}",
         )
 
 
