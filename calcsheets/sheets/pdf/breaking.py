@@ -8,6 +8,8 @@ from dataclasses import dataclass
 from xml.etree import ElementTree as ET
 
 NAMESPACE = "http://www.w3.org/1998/Math/MathML"
+_NARROW = 0.25  # width in ems of a narrow character
+_FRACTION = 0.7  # size of the terms of a fraction within a fraction, at least
 _RELATIONS = ("=", "≤", "≥", "<", ">", "≈")
 
 
@@ -52,6 +54,11 @@ def runs(markup: str) -> tuple[Run, ...]:
     return tuple(found)
 
 
+def least_width(markup: str) -> float:
+    """Return a width in ems that a row is not narrower than, without drawing it."""
+    return sum(_least_width(element) for element in _elements(markup))
+
+
 def opened(run: Run) -> tuple[Run, ...]:
     """Return the runs of a run whose outermost brackets, fractions and roots are in the line.
 
@@ -80,6 +87,18 @@ def math(markup: str) -> str:
 
 def _elements(markup: str) -> Iterator[ET.Element]:
     yield from ET.fromstring(f"<mrow>{markup}</mrow>")  # noqa: S314 - our own markup
+
+
+def _least_width(element: ET.Element) -> float:
+    if not len(element):
+        return len(element.text or "") * _NARROW
+    widths = [_least_width(child) for child in element]
+    match element.tag:
+        case "mfrac":
+            return max(widths) * _FRACTION
+        case "msup" | "msub" | "msubsup" | "mover":
+            return widths[0]
+    return sum(widths)
 
 
 def _text_of(element: ET.Element) -> str:

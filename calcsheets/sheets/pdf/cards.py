@@ -43,7 +43,7 @@ from .picture import picture
 from .views import ResultLine, known_text, result_lines
 
 _MOVE_SHARE = 0.62
-_LIMIT_SHARE = 0.36
+_LIMIT_SHARE = 0.26
 _TEXT_DEPTH = 3.4  # how far a line of text reaches below its baseline, in points
 
 
@@ -251,4 +251,3 @@ def _constants(published: Equation | Condition) -> Iterator[Where]:
 
 def _constants_of(expressions: Iterable[Expr]) -> tuple[Constant, ...]:
     return tuple(dict.fromkeys(found for e in expressions for found in constants_in(e)))
-

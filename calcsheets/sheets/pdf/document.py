@@ -125,9 +125,7 @@ def pdf_bytes(record: Record, paper: str = "A4", attachments: Sequence[Attachmen
         url_fetcher=fetcher,
         font_config=fonts,
     )
-    html = weasyprint.HTML(
-        string=render_html(record, paper), base_url=base, url_fetcher=fetcher
-    )
+    html = weasyprint.HTML(string=render_html(record, paper), base_url=base, url_fetcher=fetcher)
     content: bytes = html.write_pdf(
         stylesheets=[style],
         font_config=fonts,
@@ -168,6 +166,6 @@ def _attached(item: Attachment, date: datetime) -> Any:
 
 
 def _each_file_once(document: object, pdf: Any) -> None:
-    """Name each attached file once among the associated files, where the composer names it twice."""
+    """Name each attached file once among the associated files; the composer names it twice."""
     if "AF" in pdf.catalog:
         pdf.catalog["AF"][:] = list(dict.fromkeys(pdf.catalog["AF"]))

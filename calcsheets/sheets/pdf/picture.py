@@ -3,13 +3,14 @@
 from __future__ import annotations
 
 import re
+from collections.abc import Iterator
 from dataclasses import dataclass, replace
 from functools import lru_cache
 
 from markupsafe import Markup, escape
 
 from ..typesetting import Drawing, draw
-from .breaking import Run, math, opened, runs
+from .breaking import Run, least_width, math, opened, runs
 
 SIZE = 9.5
 """Size of the letters of an equation, in points."""
@@ -50,7 +51,7 @@ class Picture:
     def svg(self, alternative: str) -> Markup:
         """Return the picture with a text alternative."""
         width, height = self.width / self.scale, self.height / self.scale
-        return Markup(
+        return Markup(  # noqa: S704 - our own drawing, and an escaped text
             f'<svg xmlns="http://www.w3.org/2000/svg" width="{self.width:.2f}pt" '
             f'height="{self.height:.2f}pt" viewBox="0 0 {width:.2f} {height:.2f}" '
             f'style="vertical-align:-{self.depth:.2f}pt">'
@@ -102,7 +103,7 @@ def picture(markup: str, width: float) -> Picture:
         The picture, no wider than the column. Lines are broken before operators; fractions,
         roots and brackets are opened only where they are wider than the column.
     """
-    parts = tuple(_drawn(run) for run in runs(markup))
+    parts = tuple(_drawn(run) for run in _openings(runs(markup), width))
     total = sum(part.width for part in parts)
     if total * _SHRUNK_BEFORE_BROKEN <= width:
         return _composed((parts,), 0.0, width)
@@ -117,6 +118,16 @@ def picture(markup: str, width: float) -> Picture:
 
 def _drawn(run: Run) -> _Part:
     return _Part(draw(math(run.markup), SIZE), run.sign, run.relation, run)
+
+
+def _openings(found: tuple[Run, ...], width: float) -> Iterator[Run]:
+    """Open what is certainly wider than the column before it is drawn, which takes long."""
+    for run in found:
+        inside = opened(run) if least_width(run.markup) * SIZE > width else (run,)
+        if len(inside) > 1:
+            yield from _openings(inside, width)
+        else:
+            yield run
 
 
 def _operator(sign: str) -> Drawing:
@@ -168,9 +179,7 @@ def _composed(lines: tuple[tuple[_Part, ...], ...], indent: float, width: float)
     scale = min(1.0, width / widest)
     markup = "".join(_group(item, baselines[item.line]) for item in placed)
     depth = height - baselines[-1]
-    return Picture(
-        markup, widest * scale, height * scale, depth * scale, scale, len(lines)
-    )
+    return Picture(markup, widest * scale, height * scale, depth * scale, scale, len(lines))
 
 
 def _baselines(placed: list[_Placed], lines: int) -> tuple[list[float], float]:

@@ -151,4 +151,3 @@ def check_lines(record: Record) -> tuple[CheckLine, ...]:
     return tuple(
         CheckLine(check, number_html(significant(check.difference, 2))) for check in record.checks
     )
-
