@@ -5,7 +5,7 @@ from __future__ import annotations
 from decimal import Decimal
 from fractions import Fraction
 
-from hypothesis import example, given
+from hypothesis import example, given, settings
 from hypothesis import strategies as st
 
 from calcsheets.errors import UnitError
@@ -24,6 +24,7 @@ numbers = st.decimals(min_value=-(10**9), max_value=10**9, places=6) | st.decima
 texts = st.text(max_size=90) | st.text("0123456789.,+-eE' _bargmNSCFkPh23/()*°ΔK³", max_size=30)
 
 
+@settings(deadline=None)
 @given(number=numbers, unit=st.sampled_from(all_units()))
 def test_a_decimal_stays_as_typed_and_exact(number: Decimal, unit: object) -> None:
     name = unit.name  # type: ignore[attr-defined]
@@ -33,6 +34,7 @@ def test_a_decimal_stays_as_typed_and_exact(number: Decimal, unit: object) -> No
     assert read_measured(f"{measured.number} {measured.unit.name}").rational == measured.rational
 
 
+@settings(deadline=None)
 @given(text=texts)
 @example("1 ")
 @example("٣ bar")
@@ -50,6 +52,7 @@ def test_a_text_is_read_or_refused(text: str) -> None:
         assert measured.unit in all_units()
 
 
+@settings(deadline=None)
 @given(text=texts, symbol=st.sampled_from(sorted(catalogue())))
 def test_a_text_fits_a_quantity_or_is_refused(text: str, symbol: str) -> None:
     try:
@@ -60,6 +63,7 @@ def test_a_text_fits_a_quantity_or_is_refused(text: str, symbol: str) -> None:
         assert stated.low <= stated.high
 
 
+@settings(deadline=None)
 @given(symbol=st.sampled_from(sorted(catalogue())), unit=st.sampled_from(sorted(units_by_name())))
 def test_every_unit_fits_a_quantity_or_is_refused_with_a_remedy(symbol: str, unit: str) -> None:
     quantity = catalogue()[symbol]
