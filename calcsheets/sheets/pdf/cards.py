@@ -2,8 +2,9 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Iterator, Mapping
+from collections.abc import Iterable, Iterator
 from dataclasses import dataclass
+from fractions import Fraction
 
 from markupsafe import Markup
 
@@ -15,6 +16,7 @@ from ...expressions import (
     Expr,
     Symbol,
     constants_in,
+    decimal_text,
     dimension_of,
 )
 from ...quantities import Dimension, catalogue
@@ -169,8 +171,19 @@ def _line(
     )
 
 
-def _numbers(step: StepRecord) -> Mapping[Symbol, tuple[NumberText, str]]:
-    return {operand.symbol: (working(operand.value), operand.unit) for operand in step.operands}
+def _numbers(
+    step: StepRecord, relation: RelationRecord
+) -> dict[Symbol | Constant, tuple[NumberText, str]]:
+    """The number of every operand, and of every constant but π."""
+    found: dict[Symbol | Constant, tuple[NumberText, str]] = {
+        operand.symbol: (working(operand.value), operand.unit) for operand in step.operands
+    }
+    for constant in _constants_of((relation.published.left, relation.published.right)):
+        definition = CONSTANTS[constant.name]
+        if definition.value is not None:
+            unit = coherent_unit(definition.dimension)
+            found[constant] = (working(float(definition.value)), unit)
+    return found
 
 
 def _substituted(step: StepRecord, relation: RelationRecord, width: float) -> Markup:
@@ -178,7 +191,7 @@ def _substituted(step: StepRecord, relation: RelationRecord, width: float) -> Ma
 
     A root has no solved form, so the value found is put into the published one.
     """
-    numbers = dict(_numbers(step))
+    numbers = _numbers(step, relation)
     values = ", ".join(
         f"{symbol_text(symbol)} = {number.with_unit(unit)}"
         for symbol, (number, unit) in numbers.items()
@@ -242,11 +255,17 @@ def _constants(published: Equation | Condition) -> Iterator[Where]:
             symbol_html(constant),
             definition.title,
             "",
-            number_html(typed(definition.text), coherent_unit(definition.dimension)),
+            number_html(_in_full(definition.value), coherent_unit(definition.dimension)),
             "constant",
             0,
             definition.source,
         )
+
+
+def _in_full(value: Fraction) -> NumberText:
+    """All digits of a decimal; a fraction without an end is rounded as values are."""
+    text = decimal_text(value)
+    return working(float(value)) if "/" in text else typed(text)
 
 
 def _constants_of(expressions: Iterable[Expr]) -> tuple[Constant, ...]:

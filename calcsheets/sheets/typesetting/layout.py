@@ -121,8 +121,8 @@ class Piece:
 THIN = "\u2009"
 
 
-def symbol_piece(symbol: Symbol) -> Piece:
-    """Return the letter of a symbol as a piece."""
+def symbol_piece(symbol: Symbol | Constant) -> Piece:
+    """Return the letter of a symbol or constant as a piece."""
     return Piece(letter_of(symbol), Strength.ATOM)
 
 
@@ -133,12 +133,12 @@ class Manner:
     Attributes:
         linear: whether fractions stand in the line.
         times: the sign between factors: a thin space, ``·`` or ``×``.
-        leaf: what a symbol becomes.
+        leaf: what a symbol or constant becomes.
     """
 
     linear: bool
     times: str
-    leaf: Callable[[Symbol], Piece] = symbol_piece
+    leaf: Callable[[Symbol | Constant], Piece] = symbol_piece
 
 
 _COMPARISONS = {"<=": "≤", ">=": "≥", "<": "<", ">": ">"}
@@ -170,10 +170,8 @@ def piece(expr: Expr, manner: Manner) -> Piece:
 
 def _unsigned(expr: Expr, manner: Manner) -> Piece:
     match expr:
-        case Symbol():
+        case Symbol() | Constant():
             return manner.leaf(expr)
-        case Constant():
-            return Piece(letter_of(expr), Strength.ATOM)
         case Number(value):
             return _number(value)
         case Product(factors):

@@ -6,7 +6,7 @@ from collections.abc import Mapping
 from xml.sax.saxutils import escape
 
 from ...errors import DefinitionError
-from ...expressions import Condition, Equation, Expr, Symbol
+from ...expressions import Condition, Constant, Equation, Expr, Symbol
 from .layout import (
     THIN,
     Box,
@@ -22,6 +22,7 @@ from .layout import (
     Stacked,
     Strength,
     lay_out,
+    symbol_piece,
 )
 from .lettering import Letter, base_runs, italic_subscript
 from .numbers import GROUP_SPACE, NumberText, signed_integer, typed, unit_text
@@ -42,20 +43,23 @@ def presentation_mathml(statement: Expr | Equation | Condition) -> str:
 
 
 def substituted_mathml(
-    statement: Expr | Equation | Condition, operands: Mapping[Symbol, Operand]
+    statement: Expr | Equation | Condition, operands: Mapping[Symbol | Constant, Operand]
 ) -> str:
     """Return the same statement with a number and its unit in the place of every symbol.
 
     Args:
         statement: what is set.
-        operands: for each of its symbols the number and the name of its unit.
+        operands: for each of its symbols, and for constants that shall not stay letters, the
+            number and the name of its unit.
 
     Raises:
         DefinitionError: if a symbol has no operand.
     """
 
-    def leaf(symbol: Symbol) -> Piece:
+    def leaf(symbol: Symbol | Constant) -> Piece:
         if symbol not in operands:
+            if isinstance(symbol, Constant):
+                return symbol_piece(symbol)
             raise DefinitionError(f"symbol {symbol}", "no number is given to put in its place")
         number, unit = operands[symbol]
         return _number_piece(number if isinstance(number, NumberText) else typed(number), unit)
