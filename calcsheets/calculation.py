@@ -13,7 +13,7 @@ from .quantities import (
     REFERENCE_STATES,
     Variable,
     catalogue,
-    quantity_stated,
+    quantity_given,
     read_measured,
 )
 from .record import Record
@@ -72,7 +72,7 @@ def _with_input(brief: Brief, key: str, text: str) -> Brief:
         raise BriefError(brief.file, 0, key, "there is no such quantity", "Check the key")
     try:
         measured = read_measured(text)
-        stated = Variable(quantity_stated(quantity, measured).symbol, place)
+        stated = Variable(quantity_given(quantity, measured).symbol, place)
     except UnitError as problem:
         raise BriefError(
             brief.file, 0, key, f'"{text}": {problem.reason}', problem.remedy

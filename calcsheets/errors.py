@@ -160,8 +160,9 @@ class ContradictoryInputs(PlanningError):
     difference: float
 
     def __str__(self) -> str:
+        lead = "lead" if len(self.inputs) > 1 else "leads"
         return (
-            f"{self.quantity} is {self.given}, but {', '.join(self.inputs)} lead to "
+            f"{self.quantity} is {self.given}, but {', '.join(self.inputs)} {lead} to "
             f"{self.derived} (relation: {self.relation}); the two sides differ by "
             f"{abs(self.difference):.3%}. Remove one of these inputs, or correct it."
         )

@@ -34,7 +34,7 @@ def closing_inputs(
     for size in (1, 2):
         found = []
         for extra in combinations(candidates[:_MOST_CANDIDATES], size):
-            closed = reach(problem, regimes, extra=extra)
+            closed = reach(problem, regimes, extra=extra, open_regimes=True)
             if wanted in closed:
                 open_results = sum(result not in closed for result in results)
                 users = sum(uses[variable] for variable in extra)
@@ -60,9 +60,12 @@ def _candidates(
         following: list[Variable] = []
         for instance in problem.instances:
             condition = instance.regime_variable
-            if condition is not None and regimes.get(condition) != instance.relation.regime:
+            regime = instance.relation.regime
+            if condition is not None and regimes.get(condition, regime) != regime:
                 continue
             variables = list(instance.binding.values())
+            if condition is not None and condition not in regimes:
+                variables += problem.regimes[condition].binding.values()
             if not any(variable in layer for variable in variables):
                 continue
             for variable in variables:
@@ -71,6 +74,9 @@ def _candidates(
                     following.append(variable)
         for variable in sorted(following):
             quantity = catalogue()[variable.symbol]
-            if variable.symbol not in gauges and quantity.kind is not Kind.REFERENCE_VOLUME:
+            gauge = Variable(GAUGE_OF.get(variable.symbol, ""), variable.place)
+            if gauge in problem.known or variable.symbol in gauges:
+                continue
+            if quantity.kind is not Kind.REFERENCE_VOLUME:
                 yield variable
         layer = following

@@ -80,6 +80,7 @@ def reach(
     regimes: Mapping[Variable, str],
     assumed: frozenset[Variable] = frozenset(),
     extra: Iterable[Variable] = (),
+    open_regimes: bool = False,
 ) -> Reach:
     """Return everything that follows, by the cheapest derivations.
 
@@ -88,9 +89,11 @@ def reach(
         regimes: outcome of each regime that is decided; relations of others are not offered.
         assumed: regimes whose outcome is assumed and not derived before it is used.
         extra: variables to take as known besides the given ones.
+        open_regimes: whether relations of undecided regimes are offered too, once the regime
+            can be decided: for what could be reached, not for what is.
     """
     known = problem.known | frozenset(extra)
-    edges = tuple(_edges(problem, regimes, assumed))
+    edges = tuple(_edges(problem, regimes, assumed, open_regimes))
     waiting = [len(set(edge.inputs) - known) for edge in edges]
     users: defaultdict[Variable, list[int]] = defaultdict(list)
     for index, edge in enumerate(edges):
@@ -159,11 +162,15 @@ class _Derivations:
 
 
 def _edges(
-    problem: Problem, regimes: Mapping[Variable, str], assumed: frozenset[Variable]
+    problem: Problem,
+    regimes: Mapping[Variable, str],
+    assumed: frozenset[Variable],
+    open_regimes: bool,
 ) -> Iterator[Edge]:
     for instance in problem.instances:
-        condition = instance.regime_variable
-        if condition is not None and regimes.get(condition) != instance.relation.regime:
+        condition, regime = instance.regime_variable, instance.relation.regime
+        undecided = regime if open_regimes else None
+        if condition is not None and regimes.get(condition, undecided) != regime:
             continue
         before = () if condition is None or condition in assumed else (condition,)
         yield from _relation_edges(instance, before)

@@ -110,6 +110,12 @@ def test_the_first_example_takes_another_receiver_pressure() -> None:
         ),
         (
             "d@orifice",
+            "-8 mm",
+            'orifice.toml: d@orifice: "-8 mm": diameter (d) must be above 0 m. Check the number '
+            "and its unit.",
+        ),
+        (
+            "d@orifice",
             "8 mm2",
             'orifice.toml: d@orifice: "8 mm2": diameter (d) is measured in m, and mm2 is a unit '
             "of another dimension. Give it in m or another unit of that dimension.",
