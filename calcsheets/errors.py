@@ -11,7 +11,8 @@
     │   └── AmbiguousRegime      more than one regime agrees with its own test
     ├── SolvingError             one planned relation gives no value
     │   ├── NoRoot               with the range that the relation can reach
-    │   └── SeveralRoots         with every root, and the question to answer
+    │   ├── SeveralRoots         with every root, and the question to answer
+    │   └── UndecidedRoots       the search did not come to an end
     ├── CheckError               an independent engine disagrees with the program
     └── OutputError              a file cannot be written
 
@@ -256,6 +257,27 @@ class SeveralRoots(SolvingError):
         return (
             f"{self.relation}: {self.unknown} may be {' or '.join(self.roots)}. "
             f"Which is meant? {remedy}."
+        )
+
+
+@dataclass(eq=False)
+class UndecidedRoots(SolvingError):
+    """The search for roots was given up; nothing is known about them.
+
+    Attributes:
+        relation: title of the relation.
+        unknown: key of the unknown.
+        bounds: the interval searched, as text.
+    """
+
+    relation: str
+    unknown: str
+    bounds: str
+
+    def __str__(self) -> str:
+        return (
+            f"{self.relation}: the search for {self.unknown} within {self.bounds} did not come "
+            f"to an end, so nothing is known about its roots. Give {self.unknown}, or other inputs."
         )
 
 

@@ -10,9 +10,18 @@ from .balls import (
     working_precision,
 )
 from .bisection import HALVINGS, Halving
+from .doubles import double_errors
 from .moves import ACTIONS, Isolation, Move, isolate, occurrences
 from .run import Outcome, RegimeOutcome, StepOutcome, solve_problem
-from .solve import OtherRoot, Question, Solution, compare, residual_of, solve
+from .solve import (
+    OtherRoot,
+    Question,
+    Solution,
+    compare,
+    residual_of,
+    size_of,
+    solve,
+)
 
 __all__ = [
     "ACTIONS",
@@ -30,12 +39,14 @@ __all__ = [
     "StepOutcome",
     "compare",
     "decimal_bounds",
+    "double_errors",
     "evaluate",
     "exact_ball",
     "isolate",
     "midpoint",
     "occurrences",
     "residual_of",
+    "size_of",
     "solve",
     "solve_problem",
     "working_precision",

@@ -17,6 +17,7 @@ from ..expressions import (
     Root,
     Sum,
     Symbol,
+    children,
     symbols_in,
 )
 
@@ -103,6 +104,30 @@ def isolate(equation: Equation, unknown: Symbol) -> Isolation | None:
         move, side, other = step
         moves.append(move)
     return Isolation(tuple(moves), other)
+
+
+def gather(equation: Equation, unknown: Symbol) -> Isolation | None:
+    """Undo operations until the innermost expression that holds every occurrence stands alone.
+
+    Returns:
+        The moves, the last of which shows that expression on the left, and what it equals;
+        or ``None`` if the unknown is on both sides or no operation can be undone.
+    """
+    moves: list[Move] = []
+    side, other = equation.left, equation.right
+    if _holds(other, unknown):
+        side, other = other, side
+        moves.append(Move("exchange sides", None, Equation(side, other)))
+    if _holds(other, unknown):
+        return None
+    exchanged = len(moves)
+    while sum(_holds(child, unknown) for child in children(side)) == 1:
+        step = _undo(side, other, unknown)
+        if step is None:
+            break
+        move, side, other = step
+        moves.append(move)
+    return Isolation(tuple(moves), other) if len(moves) > exchanged else None
 
 
 _Undone = tuple[Move, Expr, Expr]

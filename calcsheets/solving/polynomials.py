@@ -1,7 +1,8 @@
 """Unknowns that occur several times but form a polynomial of degree one or two.
 
 Square roots over the unknown are squared away, fractions cleared, and x or x = unknown² taken
-as the variable. Computer algebra collects; the result becomes a tree again.
+as the variable. Where powers or logarithms stand around the unknown, they are undone first.
+Computer algebra collects; the result becomes a tree again.
 """
 
 from __future__ import annotations
@@ -17,6 +18,7 @@ from ..expressions import (
     Constant,
     Equation,
     Expr,
+    Negative,
     Number,
     Power,
     Product,
@@ -27,7 +29,7 @@ from ..expressions import (
     symbols_in,
     to_sympy,
 )
-from .moves import Move
+from .moves import Move, divide, gather
 
 _HIGHEST = 2
 _MOST_TERMS = 40
@@ -61,8 +63,25 @@ def polynomial_form(equation: Equation, unknown: Symbol) -> PolynomialForm | Non
     import sympy
 
     squared, moves = _without_root(equation, unknown)
-    variable = to_sympy(unknown)
     difference = to_sympy(squared.left) - to_sympy(squared.right)
+    form = _form(difference, unknown, _symbol_table(squared), moves)
+    gathered = gather(equation, unknown)
+    if form is not None or gathered is None:
+        return form
+    # The other side may hold logarithms; it is one known number to the polynomial.
+    other_side = sympy.Symbol("other side", real=True)
+    names = {**_symbol_table(equation), other_side.name: gathered.solved}
+    difference = to_sympy(gathered.moves[-1].result.left) - other_side
+    return _form(difference, unknown, names, gathered.moves)
+
+
+def _form(
+    difference: Any, unknown: Symbol, names: dict[str, Expr], moves: tuple[Move, ...]
+) -> PolynomialForm | None:
+    """The solved forms of ``difference = 0``, or ``None`` if it is no such polynomial."""
+    import sympy
+
+    variable = to_sympy(unknown)
     numerator = sympy.numer(sympy.together(difference))
     if not numerator.is_polynomial(variable):
         return None
@@ -73,16 +92,14 @@ def polynomial_form(equation: Equation, unknown: Symbol) -> PolynomialForm | Non
     degree = (max(exponents) - shift) // step
     if not 1 <= degree <= _HIGHEST:
         return None
-    names = _symbol_table(squared)
-    coefficients = []
-    for power in range(degree + 1):
-        coefficient = sympy.factor_terms(
-            polynomial.coeff_monomial(variable ** (shift + step * power))
-        )
-        tree = _from_sympy(sympy.factor(coefficient), names)
-        if tree is None:
-            return None
-        coefficients.append(tree)
+    powers = [variable ** (shift + step * power) for power in range(degree + 1)]
+    factored = [sympy.factor(sympy.factor_terms(polynomial.coeff_monomial(x))) for x in powers]
+    if factored[-1].could_extract_minus_sign():
+        factored = [-coefficient for coefficient in factored]
+    trees = [_from_sympy(coefficient, names) for coefficient in factored]
+    coefficients = [tree for tree in trees if tree is not None]
+    if len(coefficients) < len(trees):
+        return None
     collected = unknown**2 if step == 2 else unknown
     candidates = _linear(coefficients) if degree == 1 else _quadratic(coefficients)
     shown = _collected(coefficients, collected)
@@ -111,22 +128,36 @@ def _square(side: Expr, two: Number) -> Expr:
 
 def _linear(coefficients: list[Expr]) -> tuple[Expr, ...]:
     constant, slope = coefficients
-    return (Quotient(-constant, slope),)
+    return (divide(_negated(constant), slope),)
 
 
 def _quadratic(coefficients: list[Expr]) -> tuple[Expr, ...]:
     c, b, a = coefficients
-    root = Root(b**2 - 4 * a * c)
-    return (Quotient(-b + root, 2 * a), Quotient(-b - root, 2 * a))
+    product = 4 * a * (c.operand if isinstance(c, Negative) else c)
+    discriminant = b**2 + product if isinstance(c, Negative) else b**2 - product
+    root = Root(discriminant)
+    return (Quotient(_negated(b) + root, 2 * a), Quotient(_negated(b) - root, 2 * a))
+
+
+def _negated(expr: Expr) -> Expr:
+    return expr.operand if isinstance(expr, Negative) else Negative(expr)
 
 
 def _collected(coefficients: list[Expr], variable: Expr) -> Expr:
     terms: list[Expr] = []
     for power in range(len(coefficients) - 1, 0, -1):
         factor = variable if power == 1 else Power(variable, Number(Fraction(power)))
-        terms.append(Product((coefficients[power], factor)))
+        terms.append(_term(coefficients[power], factor))
     terms.append(coefficients[0])
     return Sum(tuple(terms))
+
+
+def _term(coefficient: Expr, factor: Expr) -> Expr:
+    if coefficient == Number(Fraction(1)):
+        return factor
+    if isinstance(coefficient, Negative):
+        return Negative(coefficient.operand * factor)
+    return coefficient * factor
 
 
 def _symbol_table(equation: Equation) -> dict[str, Expr]:
@@ -136,16 +167,20 @@ def _symbol_table(equation: Equation) -> dict[str, Expr]:
 
 
 def _from_sympy(expr: Any, names: dict[str, Expr]) -> Expr | None:
-    """Return the tree of a rational expression, in the order that algebra left it in."""
+    """Return the tree of a rational expression: signs in front, numbers last in a sum."""
     import sympy
 
     if expr.is_Symbol:
         return names[expr.name]
     if expr == sympy.pi:
         return PI
-    if expr.is_Rational:
+    if expr.is_Number and expr.is_Rational and expr >= 0:
         return Number(Fraction(int(expr.p), int(expr.q)))
-    parts = [_from_sympy(argument, names) for argument in expr.args]
+    if (expr.is_Mul or expr.is_Number) and expr.could_extract_minus_sign():
+        opposite = _from_sympy(-expr, names)
+        return None if opposite is None else Negative(opposite)
+    arguments = sorted(expr.args, key=_reading_order) if expr.is_Add else expr.args
+    parts = [_from_sympy(argument, names) for argument in arguments]
     if len(parts) > _MOST_TERMS or any(part is None for part in parts):
         return None
     known = tuple(part for part in parts if part is not None)
@@ -153,9 +188,23 @@ def _from_sympy(expr: Any, names: dict[str, Expr]) -> Expr | None:
         return Sum(known)
     if expr.is_Mul:
         return _fraction(known)
-    if expr.is_Pow:
-        return Power(known[0], known[1])
+    if expr.is_Pow and isinstance(known[1], Number | Negative):
+        return Power(known[0], _plain(known[1]))
     return None
+
+
+def _reading_order(term: Any) -> tuple[bool, bool, str]:
+    """Positive terms before negative ones, numbers last; a total order."""
+    return (bool(term.could_extract_minus_sign()), bool(term.is_Number), str(term))
+
+
+def _plain(exponent: Expr) -> Expr:
+    """A negative number as one number, so that a power of it is seen as a reciprocal."""
+    match exponent:
+        case Negative(Number(value)):
+            return Number(-value)
+        case _:
+            return exponent
 
 
 def _fraction(factors: tuple[Expr, ...]) -> Expr:

@@ -69,6 +69,8 @@ def isolate_roots(
         if value is None or (value.is_finite() and not value.contains(0)):
             continue
         rate = slope(ball)
+        if rate.is_finite() and _excluded(function, rate, ball):
+            continue
         if rate.is_finite() and not rate.contains(0):
             crossing = _crossing(function, a, b)
             if crossing is not None:
@@ -87,9 +89,14 @@ def isolate_roots(
 
 def _first_cells(low: Fraction, high: Fraction) -> Iterator[tuple[Fraction, Fraction]]:
     """Cells that double in width away from zero, so that every decade is searched alike."""
-    if low < 0:
-        yield low, high
+    if high <= 0:
+        yield from ((-b, -a) for a, b in reversed(list(_first_cells(-high, -low))))
         return
+    if low < 0:
+        near = min(-low, high) * _TINY
+        yield from ((-b, -a) for a, b in reversed(list(_first_cells(near, -low))))
+        yield -near, near
+        low = near
     edge = low if low > 0 else high * _TINY
     while edge * 2 < high:
         yield edge, edge * 2
@@ -105,13 +112,25 @@ def _defined(function: BallFunction, ball: Ball) -> Ball | None:
         return None
 
 
+def _excluded(function: BallFunction, rate: Ball, ball: Ball) -> bool:
+    """Whether the mean-value form, which narrows faster than its cell, proves no root there."""
+    centre = arb(ball.mid())
+    at_centre = _defined(function, centre)
+    if at_centre is None:
+        return False
+    value = at_centre + rate * (ball - centre)
+    return bool(value.is_finite() and not value.contains(0))
+
+
 def _interval(a: Fraction, b: Fraction) -> Ball:
     return exact_ball(a).union(exact_ball(b))
 
 
 def _crossing(function: BallFunction, a: Fraction, b: Fraction) -> bool | None:
     """Whether a monotone function changes sign in a cell; ``None`` if an end is undecided."""
-    at_a, at_b = function(exact_ball(a)), function(exact_ball(b))
+    at_a, at_b = _defined(function, exact_ball(a)), _defined(function, exact_ball(b))
+    if at_a is None or at_b is None:
+        return None
     if at_a.contains(0) or at_b.contains(0):
         return True if _end_is_root(at_a, at_b) else None
     return bool((at_a > 0) != (at_b > 0))

@@ -293,9 +293,7 @@ def _not_enough(
     )
 
 
-def _against(
-    problem: Problem, regimes: Mapping[Variable, str], missing: Variable
-) -> Iterator[str]:
+def _against(problem: Problem, regimes: Mapping[Variable, str], missing: Variable) -> Iterator[str]:
     """Say which regimes stand against relations that would give a variable."""
     for instance in problem.instances:
         condition = instance.regime_variable

@@ -2,14 +2,15 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Mapping
+import math
+from collections.abc import Callable, Iterator, Mapping
 from dataclasses import dataclass, replace
 from fractions import Fraction
 
 from flint import arb
 
-from ..errors import NoRoot, SeveralRoots
-from ..expressions import Condition, Expr, Number, Symbol, derivative, symbols_in
+from ..errors import NoRoot, SeveralRoots, UndecidedRoots
+from ..expressions import Condition, Expr, Number, Sum, Symbol, derivative, symbols_in
 from ..relations import Relation
 from .balls import Ball, OutsideDomainError, evaluate, exact_ball, midpoint
 from .bisection import Halving, halvings
@@ -18,6 +19,7 @@ from .polynomials import polynomial_form
 from .roots import TooManyCellsError, isolate_roots
 
 _SAMPLES = 64
+_NARROWINGS = 80
 _TINY = Fraction(1, 10**15)
 _RESIDUAL_SCALE = arb(2) ** -60
 
@@ -73,7 +75,7 @@ class Question:
         branch: stated branch, empty for none.
         key: key of the unknown in the brief, for messages.
         place: where a branch would be stated, for messages.
-        conditions: limits of the relation and the test of its regime, which a root must meet.
+        conditions: what a root must meet besides the limits of the relation: its regime test.
     """
 
     relation: Relation
@@ -88,10 +90,27 @@ class Question:
 def solve(question: Question) -> Solution:
     """Solve one relation for one unknown.
 
+    A root within the limits of the relation goes before one outside them. Where only a root
+    outside exists it is returned: the record marks the step.
+
     Raises:
         NoRoot: if no value inside the physical bounds satisfies the published form.
+        UndecidedRoots: if the search for roots did not come to an end.
         SeveralRoots: if more than one does and no branch is stated.
     """
+    limits = tuple(limit.condition for limit in question.relation.limits)
+    try:
+        return _solve(replace(question, conditions=(*question.conditions, *limits)))
+    except NoRoot as within_limits:
+        if not limits:
+            raise
+        try:
+            return _solve(question)
+        except NoRoot:
+            raise within_limits from None
+
+
+def _solve(question: Question) -> Solution:
     published, unknown = question.relation.published, question.unknown
     isolation = isolate(published, unknown)
     if isolation is not None:
@@ -122,6 +141,14 @@ def bounds_of(question: Question) -> tuple[Fraction, Fraction]:
 def residual_of(relation: Relation, values: Mapping[Symbol, Ball]) -> Ball:
     """Return left minus right side of the published form."""
     return evaluate(relation.published.left, values) - evaluate(relation.published.right, values)
+
+
+def size_of(relation: Relation, values: Mapping[Symbol, Ball]) -> Ball:
+    """Return the size of what is compared: terms that are added count each, so that sides
+    that cancel to zero still have one."""
+    sides = (relation.published.left, relation.published.right)
+    terms = [term for side in sides for term in (side.terms if isinstance(side, Sum) else (side,))]
+    return sum((abs(evaluate(term, values)) for term in terms), arb(0))
 
 
 def _solution(
@@ -206,7 +233,9 @@ def _roots(question: Question) -> tuple[Ball, ...]:
             high,
         )
     except TooManyCellsError as problem:
-        raise _no_root(question) from problem
+        raise UndecidedRoots(
+            question.relation.title, question.key, _interval_text(low, high)
+        ) from problem
     return tuple(root.value for root in found if _meets_conditions(question, root.value))
 
 
@@ -287,10 +316,9 @@ def _candidate(question: Question, solved: Expr) -> Ball | None:
     if definition.low == 0 and value <= 0:
         return None
     values = {**question.values, question.unknown: value}
-    left = evaluate(question.relation.published.left, values)
-    right = evaluate(question.relation.published.right, values)
-    scale = abs(left) + abs(right)
-    proved = (left - right).is_finite() and abs(left - right) <= scale * _RESIDUAL_SCALE
+    difference = residual_of(question.relation, values)
+    allowed = size_of(question.relation, values) * _RESIDUAL_SCALE
+    proved = difference.is_finite() and abs(difference) <= allowed
     return value if proved and _meets_conditions(question, value) else None
 
 
@@ -307,10 +335,19 @@ def _no_root(question: Question) -> NoRoot:
     return NoRoot(
         relation=question.relation.title,
         unknown=question.key,
-        bounds=f"{_text(exact_ball(low))} to {_text(exact_ball(high))}",
+        bounds=_interval_text(low, high),
         reached=_reached(question, reached, low, high),
         asked="0" if on_both else _asked(question, asked),
+        limits=tuple(_limits_missed(question)),
     )
+
+
+def _limits_missed(question: Question) -> Iterator[str]:
+    """Reasons of the limits that the known values alone already miss."""
+    for limit in question.relation.limits:
+        known = set(limit.condition.symbols) <= set(question.values)
+        if known and compare(limit.condition, question.values) is False:
+            yield limit.reason
 
 
 def _asked(question: Question, expr: Expr) -> str:
@@ -321,19 +358,46 @@ def _asked(question: Question, expr: Expr) -> str:
         return "no value at all"
 
 
+def _interval_text(low: Fraction, high: Fraction) -> str:
+    return f"{_text(exact_ball(low))} to {_text(exact_ball(high))}"
+
+
 def _reached(question: Question, expr: Expr, low: Fraction, high: Fraction) -> str:
-    """The range of one side over the bounds, by samples in every decade."""
-    found = []
-    for sample in _samples(low, high):
+    """The range of one side over the bounds: samples in every decade, their extremes narrowed."""
+
+    def at(x: Fraction) -> Ball | None:
         try:
-            value = evaluate(expr, {**question.values, question.unknown: exact_ball(sample)})
+            value = evaluate(expr, {**question.values, question.unknown: exact_ball(x)})
         except OutsideDomainError:
-            continue
-        found += [value] if value.is_finite() else []
+            return None
+        return value if value.is_finite() else None
+
+    samples = _samples(low, high)
+    found = {x: value for x in samples if (value := at(x)) is not None}
     if not found:
         return "no value at all"
-    ordered = sorted(found, key=lambda ball: float(ball.mid()))
-    return f"{_text(ordered[0])} to {_text(ordered[-1])}"
+    lowest = min(found, key=lambda x: float(found[x].mid()))
+    highest = max(found, key=lambda x: float(found[x].mid()))
+    ends = (_extreme(at, samples, lowest, -1), _extreme(at, samples, highest, 1))
+    return " to ".join(_text(end) for end in ends)
+
+
+def _extreme(
+    at: Callable[[Fraction], Ball | None], samples: list[Fraction], best: Fraction, sign: int
+) -> Ball:
+    """The largest (smallest for sign -1) value between the neighbours of the best sample."""
+    index = samples.index(best)
+    a, b = samples[max(index - 1, 0)], samples[min(index + 1, len(samples) - 1)]
+
+    def height(x: Fraction) -> float:
+        value = at(x)
+        return -math.inf if value is None else sign * float(value.mid())
+
+    for _ in range(_NARROWINGS):
+        third = (b - a) / 3
+        left, right = Fraction(float(a + third)), Fraction(float(b - third))
+        a, b = (left, b) if height(left) < height(right) else (a, right)
+    return at(max((a, best, b), key=height))
 
 
 def _samples(low: Fraction, high: Fraction) -> list[Fraction]:
