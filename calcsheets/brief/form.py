@@ -116,6 +116,8 @@ def _gas_keys() -> Keys:
         ),
         Key("composition", "fractions", "Gas names with their fractions; one may be balance."),
         Key("by", _TEXT, "What the fractions count.", choices=BASES),
+        Key("source", _TEXT, "Document, revision and page that the composition comes from."),
+        Key("status", _TEXT, "How far the composition is confirmed.", choices=STATUSES),
         *_quantities("gas"),
     )
 

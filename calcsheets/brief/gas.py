@@ -15,6 +15,7 @@ from .table import Table
 from .values import Stated, read_values
 
 _LIBRARY_STATUS = "verified"
+FRACTION_SYMBOLS = {"mole": "x", "mass": "w"}
 BALANCE = "balance"
 
 
@@ -40,8 +41,11 @@ def read_gas(table: Table, form: Form, places: tuple[str, ...]) -> tuple[GasStat
                 "Give one of them",
             )
         return _mixture(table, form, name, places)
-    if "by" in table.entries:
-        table.refuse("by", "by belongs to a composition", "Add composition, or remove by")
+    for key in ("by", "source", "status"):
+        if key in table.entries:
+            table.refuse(
+                key, f"{key} belongs to a composition", f"Add composition, or remove {key}"
+            )
     if not name and not own.given:
         table.refuse("", "the gas is not stated", "Give name, composition, or gamma and M_w")
     return _single(table, name, own)
@@ -116,18 +120,22 @@ def _mixture(
                 "Rename the station or process",
             )
         components.append((gas, measured))
-        given.append(_fraction(table, component, gas, measured, basis))
+        if table.entries[component] != BALANCE:
+            given.append(_fraction(root, form, component, gas, measured))
         given += _data(gas, gas.key)
     title = name or ", ".join(f"{gas.title} {fraction}" for gas, fraction in components)
     cautions = tuple(dict.fromkeys(f"{g.title}: {c}" for g, _ in components for c in g.cautions))
     return GasStatement(title, tuple(components), basis, None, cautions), Stated(tuple(given), ())
 
 
-def _fraction(table: Table, key: str, gas: Gas, value: Decimal, basis: str) -> Given:
-    symbol = "x" if basis == "mole" else "w"
-    source = "the brief, as the balance to 1" if table.entries[key] == BALANCE else "the brief"
+def _fraction(root: Table, form: Form, component: str, gas: Gas, value: Decimal) -> Given:
     return Given(
-        Variable(symbol, gas.key), read_measured(str(value)), source, "", "", table.line(key)
+        variable=Variable(FRACTION_SYMBOLS[root.text(form.gas["by"])], gas.key),
+        measured=read_measured(str(value)),
+        source=root.text(form.gas["source"]),
+        tolerance="",
+        status=root.text(form.gas["status"]),
+        line=root.table("composition").line(component),
     )
 
 

@@ -130,7 +130,10 @@ def _gas(form: Form) -> Schema:
     return {
         **_table(form.gas),
         "anyOf": [{"required": ["name"]}, {"required": ["composition"]}, *own],
-        "dependentRequired": {"composition": ["by"], "by": ["composition"]},
+        "dependentRequired": {
+            "composition": ["by"],
+            **{key: ["composition"] for key in ("by", "source", "status")},
+        },
         "dependentSchemas": {"composition": {"not": {"anyOf": own}}},
     }
 

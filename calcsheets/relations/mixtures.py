@@ -6,7 +6,7 @@ from collections.abc import Sequence
 
 from ..expressions import Expr, Sum, symbols
 from .relation import Relation
-from .sources import textbook
+from .sources import definition, textbook
 from .thermodynamics import PERFECT
 
 M_w, C_p, c_p, x, w = symbols("M_w C_p c_p x w")
@@ -20,10 +20,11 @@ def mixture_relations(components: Sequence[str], basis: str) -> tuple[Relation, 
         basis: ``mole`` or ``mass``: what the fractions count.
 
     Returns:
-        Molar mass and heat capacity of the mixture from those of its components.
+        The sum of its fractions, and its molar mass and heat capacity from its components'.
     """
     if basis == "mole":
         return (
+            _whole("Mole fractions", [x.of(name) for name in components]),
             _relation(
                 "mixture_molar_mass",
                 "Molar mass of a mixture from mole fractions",
@@ -38,6 +39,7 @@ def mixture_relations(components: Sequence[str], basis: str) -> tuple[Relation, 
             ),
         )
     return (
+        _whole("Mass fractions", [w.of(name) for name in components]),
         _relation(
             "mixture_molar_mass",
             "Molar mass of a mixture from mass fractions",
@@ -50,6 +52,18 @@ def mixture_relations(components: Sequence[str], basis: str) -> tuple[Relation, 
             c_p,
             _sum([w.of(name) * C_p.of(name) / M_w.of(name) for name in components]),
         ),
+    )
+
+
+def _whole(title: str, fractions: Sequence[Expr]) -> Relation:
+    """The balance of a composition follows from it; where all are given it is a check."""
+    return Relation(
+        "composition",
+        f"{title} add to one",
+        _sum(fractions).equals(1),
+        definition("Definition of fractions"),
+        ("gas",),
+        chapter="mixtures",
     )
 
 

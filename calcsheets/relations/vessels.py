@@ -10,7 +10,7 @@ from .sources import definition, derived, naca_1135, textbook
 from .thermodynamics import CONSTANT_HEATS, PERFECT
 
 gamma, R, M_w, t, dm = symbols("gamma R M_w t dm")
-p_0, T_0, V, m, N = symbols("p_0 T_0 V m N")
+p, T, p_0, T_0, V, m, N = symbols("p T p_0 T_0 V m N")
 p_1, T_1, V_1, m_1 = (s.of(INLET) for s in symbols("p_0 T_0 V m"))
 p_2, T_2, V_2, m_2 = (s.of(OUTLET) for s in symbols("p_0 T_0 V m"))
 A, C_d, mdot = (s.of(THROUGH) for s in symbols("A C_d mdot"))
@@ -48,6 +48,22 @@ CHAPTER = Chapter(
             textbook("Perfect-gas equation of state"),
             ("vessel",),
             assumptions=(PERFECT, _UNIFORM),
+        ),
+        Relation(
+            "pressure_at_rest",
+            "Gas at rest: static and stagnation pressure are one",
+            p.equals(p_0),
+            definition("Definition of the stagnation state"),
+            ("vessel",),
+            assumptions=(_UNIFORM,),
+        ),
+        Relation(
+            "temperature_at_rest",
+            "Gas at rest: static and stagnation temperature are one",
+            T.equals(T_0),
+            definition("Definition of the stagnation state"),
+            ("vessel",),
+            assumptions=(_UNIFORM,),
         ),
         Relation(
             "amount_held",
