@@ -25,6 +25,8 @@ GENERATED = {
     "brief.md": "calcsheets.brief.document",
     "units.md": "calcsheets.quantities.document",
     "gases.md": "calcsheets.gases.document",
+    "relations.md": "calcsheets.sheets.library_page",
+    "brief.schema.json": "calcsheets.brief.schema",
 }
 
 
@@ -47,6 +49,16 @@ def test_a_page_is_what_its_command_writes(page: str, module: str) -> None:
     command = [sys.executable, "-m", module]
     written = subprocess.run(command, capture_output=True, check=True, cwd=ROOT).stdout
     assert written == (ROOT / "docs" / page).read_bytes(), f"run python -m {module} > docs/{page}"
+
+
+def test_the_python_of_the_readme_runs(tmp_path: Path) -> None:
+    text = (ROOT / "README.md").read_text("utf-8")
+    (code,) = re.findall(r"^```python\n(.*?)^```", text, re.MULTILINE | re.DOTALL)
+    code = code.replace("packages/trial", str(tmp_path / "trial"))
+    done = subprocess.run([sys.executable, "-c", code], cwd=ROOT, capture_output=True, text=True)
+    assert done.returncode == 0, done.stderr
+    assert done.stdout.endswith(" kilogram / hour\n")
+    assert len(list((tmp_path / "trial").iterdir())) == 4
 
 
 def test_the_page_of_the_brief_holds_the_example_and_parts_of_one() -> None:
