@@ -205,6 +205,8 @@ def divide(numerator: Expr, divisor: Expr) -> Expr:
     """Return the quotient as one fraction where an operand is one already."""
     if divisor == Number(Fraction(1)):
         return numerator
+    if isinstance(divisor, Quotient) and divisor.numerator == Number(Fraction(1)):
+        return times(numerator, divisor.denominator)
     if isinstance(divisor, Quotient):
         return times(numerator, Quotient(divisor.denominator, divisor.numerator))
     if isinstance(numerator, Quotient):

@@ -199,8 +199,11 @@ def _bracket(
     low = low if low != 0 else high * _TINY
     centre = Fraction(midpoint(value))
     for other in others:
-        between = (Fraction(midpoint(other.value)) + centre) / 2
-        low, high = (max(low, between), high) if between < centre else (low, min(high, between))
+        there = Fraction(midpoint(other.value))
+        if low <= there < centre:
+            low = (there + centre) / 2
+        elif centre < there <= high:
+            high = (there + centre) / 2
     difference = question.relation.published.left - question.relation.published.right
     ends = []
     for end in (low, high):

@@ -7,12 +7,13 @@ from dataclasses import dataclass
 from types import MappingProxyType
 
 from ...expressions import CONSTANTS, Constant, Symbol
+from ...gases import gases
 from ...relations.roles import DISCHARGE, INLET, OUTLET, SUPPLY, THROUGH
 
 ROLE_SUBSCRIPTS: Mapping[str, str] = MappingProxyType(
     {INLET: "1", OUTLET: "2", THROUGH: "", SUPPLY: "s", DISCHARGE: "b"}
 )
-"""The subscript that marks a role; any other role is its own subscript."""
+"""The subscript that marks a role; a gas is marked by its formula, any other role by itself."""
 
 _QUANTITY_SUBSCRIPTS = frozenset({"p", "v", "V"})
 
@@ -42,13 +43,22 @@ def letter_of(symbol: Symbol | Constant) -> Letter:
         constant = CONSTANTS[symbol.name]
         return Letter(constant.base, _split(constant.subscript), upright=constant.value is None)
     notation = symbol.definition.notation
-    role = ROLE_SUBSCRIPTS.get(symbol.role, symbol.role)
+    role = ROLE_SUBSCRIPTS.get(symbol.role, _component(symbol.role))
     return Letter(
         notation.base,
         (*_split(notation.subscript), *((role,) if role else ())),
         notation.accent,
         notation.superscript,
     )
+
+
+def _component(role: str) -> str:
+    """The formula of a component of a mixture, where no other gas has the same."""
+    gas = gases().get(role)
+    if gas is None or not gas.formula:
+        return role
+    alike = [other for other in gases().values() if other.formula == gas.formula]
+    return gas.formula if len(alike) == 1 else role
 
 
 def base_runs(letter: Letter) -> tuple[tuple[str, bool], ...]:

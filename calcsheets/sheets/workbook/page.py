@@ -138,12 +138,17 @@ class Page:
     def table(self, title: str, note: str, columns: Sequence[Column]) -> None:
         """Write title, note and the heading row of a table."""
         self.sheet.write_string(0, 0, title, self.styles.title)
-        self.sheet.write_string(1, 0, note, self.styles.note)
+        self.note(1, note)
+        self.sheet.set_row(FIRST_ROW - 1, 2 * _LINE_HEIGHT + 2)
         for index, column in enumerate(columns):
             self.width(index, column.width)
             self.sheet.write_string(FIRST_ROW - 1, index, column.heading, self.styles.heading)
         self.sheet.freeze_panes(FIRST_ROW, 2)
         self.sheet.repeat_rows(FIRST_ROW - 1)
+
+    def note(self, row: int, text: str) -> None:
+        """Write a line of text across the sheet."""
+        self.sheet.write_string(row, 0, text, self.styles.note)
 
     def width(self, column: int, width: float) -> None:
         """Set the width of a column, in characters."""

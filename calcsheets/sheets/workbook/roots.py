@@ -61,7 +61,7 @@ def _write_root(page: Page, first: int, record: Record, step: StepRecord, cells:
         raise ValueError(f"step {step.number} has no equation")
     symbol, place = symbol_text(step.symbol), step.place
     title = f"Step {step.number}: {symbol}, {place}: {plain_text(published)}"
-    page.text(first - 1, 0, title, page.styles.note)
+    page.note(first - 1, title)
     operands = cells.of(step.operands)
 
     def residual(at: str) -> str:
