@@ -10,10 +10,11 @@ from fractions import Fraction
 from flint import arb
 
 from ..errors import NoRoot, SeveralRoots, UndecidedRoots
-from ..expressions import Condition, Expr, Number, Sum, Symbol, derivative, symbols_in
+from ..expressions import Condition, Expr, Function, Number, Sum, Symbol, derivative, symbols_in
 from ..relations import Relation
 from .balls import Ball, OutsideDomainError, evaluate, exact_ball, midpoint
 from .bisection import Halving, halvings
+from .logarithms import logarithm_of
 from .moves import Move, isolate
 from .polynomials import polynomial_form
 from .roots import TooManyCellsError, isolate_roots
@@ -224,7 +225,7 @@ def _defined(question: Question, expr: Expr, at: Fraction) -> bool:
 
 
 def _roots(question: Question) -> tuple[Ball, ...]:
-    difference = question.relation.published.left - question.relation.published.right
+    difference = _search_form(question)
     slope = derivative(difference, question.unknown)
     values = question.values
     low, high = bounds_of(replace(question, branch=""))
@@ -240,6 +241,22 @@ def _roots(question: Question) -> tuple[Ball, ...]:
             question.relation.title, question.key, _interval_text(low, high)
         ) from problem
     return tuple(root.value for root in found if _meets_conditions(question, root.value))
+
+
+def _search_form(question: Question) -> Expr:
+    """What is zero at a root: the difference of the sides, or of their logarithms.
+
+    Logarithms are taken where the unknown stands in a product form that must be positive,
+    because the other side is known and positive: the roots are the same.
+    """
+    left, right = question.relation.published.left, question.relation.published.right
+    for inner, known in ((left, right), (right, left)):
+        if question.unknown in set(symbols_in(known)):
+            continue
+        logarithm = logarithm_of(inner)
+        if logarithm is not None and evaluate(known, question.values) > 0:
+            return logarithm - Function("ln", known)
+    return left - right
 
 
 def _choose(question: Question, roots: tuple[Ball, ...]) -> tuple[Ball, tuple[OtherRoot, ...]]:

@@ -1,0 +1,106 @@
+"""The library as a whole, and every relation solved for every one of its quantities."""
+
+from __future__ import annotations
+
+from dataclasses import replace
+
+import pytest
+import sympy
+from flint import arb
+
+from calcsheets.errors import DefinitionError, SeveralRoots
+from calcsheets.expressions import Symbol, symbols
+from calcsheets.relations import Chapter, Library, Relation, Source, load_library
+from calcsheets.relations.relation import KNOWN
+from calcsheets.solving import Question, midpoint, solve, working_precision
+from tests.relations.states import random_states
+
+LIBRARY = load_library()
+PAIRS = [(relation, symbol) for relation in LIBRARY.relations for symbol in relation.symbols]
+STATES = 5
+SOURCE = Source("A test", "", "", "common practice")
+p, T, rho, R, u = symbols("p T rho R u")
+
+
+def test_the_library_holds_the_scope_of_the_first_chapters() -> None:
+    assert len(LIBRARY.relations) >= 45
+    assert [chapter.name for chapter in LIBRARY.chapters] == [
+        "thermodynamics", "isentropic", "streams", "orifices", "vessels", "shocks",
+    ]  # fmt: skip
+    assert {relation.chapter for relation in LIBRARY.relations} == {
+        chapter.name for chapter in LIBRARY.chapters
+    }
+
+
+@pytest.mark.parametrize("relation", LIBRARY.relations, ids=lambda relation: relation.name)
+def test_a_relation_says_where_it_comes_from(relation: Relation) -> None:
+    assert relation.source.document
+    assert relation.source.known in KNOWN
+    assert relation.title[0].isupper()
+    assert isinstance(relation.equation, sympy.Equality)
+    if relation.source.known == "from memory":
+        assert str(relation.source).endswith("(from memory: confirm in the source)")
+
+
+@pytest.mark.parametrize(("relation", "unknown"), PAIRS, ids=[f"{r.name}-{s}" for r, s in PAIRS])
+def test_a_relation_answers_for_each_of_its_quantities(relation: Relation, unknown: Symbol) -> None:
+    """A quantity of a known state is hidden and found again, or both roots are named."""
+    states = random_states(relation, STATES, seed=1)
+    assert len(states) == STATES
+    for state in states:
+        hidden = state[unknown]
+        known = {symbol: ball for symbol, ball in state.items() if symbol != unknown}
+        question = Question(relation, unknown, known, "", str(unknown), "a place")
+        with working_precision():
+            try:
+                found = solve(question).value
+            except SeveralRoots as problem:
+                roots = [float(root) for root in problem.roots]
+                assert len(roots) == 2
+                assert any(abs(root / midpoint(hidden) - 1) < 1e-6 for root in roots)
+                continue
+            assert abs(found / hidden - 1) < arb("1e-12")
+
+
+def test_a_wrong_dimension_is_refused_at_definition() -> None:
+    with pytest.raises(DefinitionError) as caught:
+        Relation("wrong", "Wrong", p.equals(rho * R), SOURCE, ("stream",))
+    assert str(caught.value) == (
+        "definition of relation wrong: its sides are in kg*m^-1*s^-2 and in kg*m^-1*s^-2*K^-1"
+    )
+
+
+def test_a_sum_of_unlike_terms_is_refused_at_definition() -> None:
+    with pytest.raises(DefinitionError) as caught:
+        Relation("wrong", "Wrong", p.equals(rho + u), SOURCE, ("stream",))
+    assert "kg*m^-3 and m*s^-1 cannot be added" in str(caught.value)
+
+
+def test_a_source_says_how_it_is_known() -> None:
+    with pytest.raises(DefinitionError):
+        Source("A book", "1953", "", "certainly")
+
+
+def test_a_name_is_taken_once() -> None:
+    relation = LIBRARY.relations[0]
+    with pytest.raises(DefinitionError) as caught:
+        Library((Chapter("a", "A", (relation, relation)),))
+    assert str(caught.value) == (
+        "definition of relation specific_gas_constant: the name is taken twice"
+    )
+
+
+def test_what_offers_a_relation_exists() -> None:
+    relation = Relation("x", "X", p.equals(rho * R * T), SOURCE, ("pipe bend",))
+    with pytest.raises(DefinitionError) as caught:
+        Library((Chapter("a", "A", (relation,)),))
+    assert str(caught.value) == "definition of relation x: nothing is called pipe bend"
+
+
+def test_the_digest_changes_with_an_equation_and_with_a_source() -> None:
+    chapter = LIBRARY.chapters[0]
+    first, *rest = chapter.relations
+    other = replace(first, source=replace(first.source, edition="another"))
+    changed = Library((replace(chapter, relations=(other, *rest)), *LIBRARY.chapters[1:]))
+    assert changed.digest != LIBRARY.digest
+    assert Library(LIBRARY.chapters).digest == LIBRARY.digest
