@@ -123,6 +123,7 @@ def _mixture(
         if table.entries[component] != BALANCE:
             given.append(_fraction(root, form, component, gas, measured))
         given += _data(gas, gas.key)
+    components.sort(key=lambda part: part[0].key)  # the order of keys in a file means nothing
     title = name or ", ".join(f"{gas.title} {fraction}" for gas, fraction in components)
     cautions = tuple(dict.fromkeys(f"{g.title}: {c}" for g, _ in components for c in g.cautions))
     return GasStatement(title, tuple(components), basis, None, cautions), Stated(tuple(given), ())

@@ -146,7 +146,7 @@ class GasStatement:
 
     Attributes:
         title: the gas in words.
-        components: gas and fraction, in order; empty for a single gas.
+        components: gas and fraction, by name of the gas; empty for a single gas.
         basis: ``mole`` or ``mass``.
         library: the gas whose data are used, ``None`` for a mixture or own properties.
         cautions: what can hurt someone.

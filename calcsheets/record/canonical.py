@@ -80,7 +80,7 @@ def _from_plain(kind: Any, value: Any) -> Any:
         return _dataclass_from(kind, value)
     if kind is float and isinstance(value, int) and not isinstance(value, bool):
         return float(value)
-    if not isinstance(value, kind):
+    if not isinstance(value, kind) or (isinstance(value, bool) and kind is not bool):
         raise ValueError(f"expected {kind.__name__}, found {type(value).__name__}")
     return value
 
