@@ -42,6 +42,7 @@ def _q(
         kind,
         reference,
         _home(symbol),
+        symbol in _MAY_BE_ZERO or (kind is Kind.REFERENCE_VOLUME and symbol.startswith("q_")),
     )
 
 
@@ -219,6 +220,9 @@ def _vessel_and_site() -> Iterator[Quantity]:
 
 _GAS = frozenset({"R", "M_w", "gamma", "c_p", "c_v", "C_p"})
 _SITE = frozenset({"p_atm", "T_atm", "p_ref", "T_ref"})
+
+
+_MAY_BE_ZERO = frozenset({"M", "M_cr", "u", "mdot", "ndot", "G", "q_V", "q_dyn", "dm", "t"})
 
 
 def _home(symbol: str) -> str:

@@ -175,8 +175,9 @@ def quantity_given(quantity: Quantity, measured: Measured) -> Quantity:
     """
     stated = quantity_stated(quantity, measured)
     value = measured.rational * (_PI if measured.unit.pi_power else 1)
-    if value < stated.low or (stated.low == 0 and value == 0):
-        limit = f"{'above' if stated.low == 0 else 'at least'} {_bound(stated.low, stated)}"
+    beyond = stated.low == 0 and not stated.zero
+    if value < stated.low or (beyond and value == 0):
+        limit = f"{'above' if beyond else 'at least'} {_bound(stated.low, stated)}"
     elif value > stated.high:
         limit = f"at most {_bound(stated.high, stated)}"
     else:

@@ -55,6 +55,7 @@ class Quantity:
         reference: name of the reference state of a volume, else empty.
         unit: coherent SI unit for printing, a name of the closed unit list.
         home: whose quantity it is: ``station`` (also a process), ``gas`` or ``site``.
+        zero: whether a quantity whose lower bound is zero may be zero, as a flow may.
     """
 
     symbol: str
@@ -67,6 +68,7 @@ class Quantity:
     kind: Kind = Kind.PLAIN
     reference: str = ""
     home: str = "station"
+    zero: bool = False
 
     def __post_init__(self) -> None:
         if self.low >= self.high:

@@ -54,7 +54,9 @@ _SOUND = (
         Function("sin", mu).equals(1 / M),
         naca_1135(),
         _STREAM,
-        limits=(Limit(M.at_least(1), "a Mach wave exists only in supersonic flow"),),
+        limits=(
+            Limit(M.at_least(1), "a Mach wave exists only in supersonic flow", essential=True),
+        ),
     ),
 )
 
@@ -167,7 +169,11 @@ _CRITICAL = (
         ),
         naca_1135("eq. 80"),
         _STREAM,
-        limits=(Limit((A / A_cr).at_least(1), "no area is smaller than the critical one"),),
+        limits=(
+            Limit(
+                (A / A_cr).at_least(1), "no area is smaller than the critical one", essential=True
+            ),
+        ),
         assumptions=_ISENTROPIC,
         branches=MACH_BRANCHES,
     ),

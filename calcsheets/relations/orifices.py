@@ -61,7 +61,11 @@ CHAPTER = Chapter(
             textbook("Isentropic flow to the back pressure (Saint-Venant and Wantzel)"),
             (ORIFICE,),
             limits=(
-                Limit((p / p_0).at_most(1), "gas flows from the higher to the lower pressure"),
+                Limit(
+                    (p / p_0).at_most(1),
+                    "gas flows from the higher to the lower pressure",
+                    essential=True,
+                ),
             ),
             regime=NOT_CHOKED,
             assumptions=_ASSUMPTIONS,

@@ -47,10 +47,13 @@ class Limit:
     Attributes:
         condition: the condition that must hold.
         reason: why, as a clause.
+        essential: whether the relation means nothing outside it, so that no value is given
+            there; outside other limits a value is given and marked.
     """
 
     condition: Condition
     reason: str
+    essential: bool = False
 
 
 @dataclass(frozen=True)

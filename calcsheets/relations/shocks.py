@@ -17,7 +17,7 @@ M_1, p_1, T_1, rho_1, p_01, A_cr1, u_1, a_cr = (
 M_2, p_2, T_2, rho_2, p_02, A_cr2, u_2 = (s.of(OUTLET) for s in symbols("M p T rho p_0 A_cr u"))
 
 _MODEL = (PERFECT, CONSTANT_HEATS, "thin shock normal to the stream, no heat exchange")
-_SUPERSONIC = (Limit(M_1.at_least(1), "a shock stands only in supersonic flow"),)
+_SUPERSONIC = (Limit(M_1.at_least(1), "a shock stands only in supersonic flow", essential=True),)
 
 
 def _shock(name: str, title: str, equation: Equation, source: Source) -> Relation:

@@ -92,18 +92,21 @@ def solve(question: Question) -> Solution:
     """Solve one relation for one unknown.
 
     A root within the limits of the relation goes before one outside them. Where only a root
-    outside exists it is returned: the record marks the step.
+    outside limits that are not essential exists it is returned: the record marks the step.
 
     Raises:
         NoRoot: if no value inside the physical bounds satisfies the published form.
         UndecidedRoots: if the search for roots did not come to an end.
         SeveralRoots: if more than one does and no branch is stated.
     """
-    limits = tuple(limit.condition for limit in question.relation.limits)
+    limits = question.relation.limits
+    essential = tuple(limit.condition for limit in limits if limit.essential)
+    others = tuple(limit.condition for limit in limits if not limit.essential)
+    question = replace(question, conditions=(*question.conditions, *essential))
     try:
-        return _solve(replace(question, conditions=(*question.conditions, *limits)))
+        return _solve(replace(question, conditions=(*question.conditions, *others)))
     except NoRoot as within_limits:
-        if not limits:
+        if not others:
             raise
         try:
             return _solve(question)
@@ -333,7 +336,7 @@ def _candidate(question: Question, solved: Expr) -> Ball | None:
         return None
     if value < exact_ball(definition.low) or value > exact_ball(definition.high):
         return None
-    if definition.low == 0 and value <= 0:
+    if definition.low == 0 and not definition.zero and value <= 0:
         return None
     values = {**question.values, question.unknown: value}
     difference = residual_of(question.relation, values)

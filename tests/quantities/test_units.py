@@ -336,7 +336,7 @@ def test_a_text_that_leaves_the_meaning_open_is_refused(symbol: str, text: str) 
     [
         ("T", "-300 °C", '"-300 °C": static temperature (T) must be above 0 K. '
          "Check the number and its unit."),
-        ("M", "-1", '"-1": Mach number (M) must be above 0. Check the number and its unit.'),
+        ("M", "-1", '"-1": Mach number (M) must be at least 0. Check the number and its unit.'),
         ("mu", "91 °", '"91 °": Mach angle (mu) must be at most 1.5708 rad. '
          "Check the number and its unit."),
     ],

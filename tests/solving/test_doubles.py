@@ -86,3 +86,36 @@ def test_a_value_that_cancels_to_zero_is_zero() -> None:
     assert found.value == 0.0
     assert 0 < found.double_error < 1e-10
     assert found.residual < 1e-40
+
+
+NOZZLE = """
+[calculation]
+number = "T-8"
+revision = "0"
+date = "2026-01-02"
+title = "Near the throat"
+purpose = "How fast?"
+originator = "A"
+
+[gas]
+gamma = "1.4"
+R = "287 J/(kg*K)"
+
+[stations.a]
+A = "1.0000001 m2"
+A_cr = "1 m2"
+branch = "supersonic"
+
+[wanted]
+"M@a" = {}
+"""
+
+
+def test_a_root_near_the_throat_is_bisected_as_far_as_doubles_reach() -> None:
+    record = calcsheets.calculate(calcsheets.parse_brief(NOZZLE))
+    found = step(record, "M@a")
+    assert found.value is not None
+    assert found.double_error / found.value > 1e-13
+    book = make_workbook(record)
+    assert require_same_values(book.content, book.formulas) > 0
+    assert {finding.verdict for finding in check_record(record)} == {"passed"}

@@ -5,6 +5,7 @@ from __future__ import annotations
 import itertools
 import random
 from collections.abc import Mapping
+from dataclasses import replace
 from fractions import Fraction
 
 import mpmath
@@ -14,9 +15,9 @@ from scipy.optimize import brentq
 import calcsheets
 from calcsheets.checking.decimals import evaluate_decimal
 from calcsheets.errors import NoRoot, SeveralRoots
-from calcsheets.expressions import Symbol
+from calcsheets.expressions import Symbol, symbols
 from calcsheets.record import Record
-from calcsheets.relations import load_library
+from calcsheets.relations import Limit, load_library
 from calcsheets.sheets.typesetting import plain_text
 from calcsheets.solving import Question, Solution, exact_ball, isolate, midpoint, solve
 from calcsheets.solving.balls import working_precision
@@ -118,6 +119,35 @@ def test_the_critical_area_has_its_one_touching_root() -> None:
 def test_a_subsonic_stream_has_no_shock_behind_which_a_wanted_state_lies() -> None:
     with pytest.raises(NoRoot):
         answer("shock_mach", "M__1", M__2="0.3", gamma="1.4")
+
+
+def test_a_shock_in_a_subsonic_stream_is_no_number() -> None:
+    with pytest.raises(NoRoot) as caught:
+        answer("shock_mach", "M__2", M__1="0.9", gamma="1.4")
+    assert "Limit not met: a shock stands only in supersonic flow." in str(caught.value)
+
+
+def test_equal_pressures_drive_no_flow() -> None:
+    known = {"C_d": "0.8", "A": "0.0001", "p_0__1": "800000", "gamma": "1.4", "R": "287",
+             "T_0__1": "300", "p__2": "800000"}  # fmt: skip
+    assert midpoint(answer("unchoked_mass_flow", "mdot", **known).value) == 0.0
+
+
+def test_outside_a_limit_that_is_not_essential_a_value_is_given() -> None:
+    """The root within the limits goes first; without one, the record marks the step."""
+    gamma, mach, area, critical = symbols("gamma M A A_cr")
+    published = RELATIONS["area_mach"].published
+    limit = Limit(mach.at_least(1), "measured in supersonic flow only")
+    relation = replace(RELATIONS["area_mach"], limits=(limit,), branches=())
+    assert published.symbols == (area, critical, mach, gamma)
+    known = {gamma: "1.4", area: "2", critical: "1"}
+    with working_precision():
+        values = {symbol: exact_ball(Fraction(text)) for symbol, text in known.items()}
+        found = solve(Question(relation, mach, values, "", "M", "a place"))
+        assert midpoint(found.value) == pytest.approx(2.19719812165)
+        thin = replace(relation, limits=(Limit(mach.at_least(10), "far beyond"),))
+        with pytest.raises(SeveralRoots):
+            solve(Question(thin, mach, values, "", "M", "a place"))
 
 
 def test_a_flow_below_choking_has_two_back_pressures_and_no_guess_is_made() -> None:

@@ -7,7 +7,7 @@ from ...record import Record, StepRecord
 from ..typesetting import plain_text, symbol_text
 from .cells import FIRST_ROW, ROOTS, Cells, reference
 from .formula import formula
-from .page import Column, Page
+from .page import Column, Page, double_size
 
 _COLUMNS = (
     Column("Row", 16),
@@ -69,6 +69,8 @@ def _write_root(page: Page, first: int, record: Record, step: StepRecord, cells:
         left, right = formula(published.left, known), formula(published.right, known)
         return f"({left}-{right})/(ABS({left})+ABS({right}))"
 
+    # Near the root the sign of the residual is noise: rows may differ by what doubles err.
+    size = double_size(step.value or 0.0, 2 * step.double_error)
     sign = reference(ROOTS, first, _SIGN)
     lower_positive = 1 if step.halvings[0].low != step.halvings[1].low else 0
     lower_positive = lower_positive if step.halvings[0].residual > 0 else 1 - lower_positive
@@ -85,12 +87,12 @@ def _write_root(page: Page, first: int, record: Record, step: StepRecord, cells:
         else:
             before = {c: reference(ROOTS, row - 1, c) for c in (_LOW, _HIGH, _MIDDLE, _RESIDUAL)}
             same = f"IF({before[_RESIDUAL]}>0,1,0)={sign}"
-            page.formula(row, _LOW, f"IF({same},{before[_MIDDLE]},{before[_LOW]})", row_values.low)
-            page.formula(
-                row, _HIGH, f"IF({same},{before[_HIGH]},{before[_MIDDLE]})", row_values.high
-            )
+            lower = f"IF({same},{before[_MIDDLE]},{before[_LOW]})"
+            page.formula(row, _LOW, lower, row_values.low, scale=size)
+            upper = f"IF({same},{before[_HIGH]},{before[_MIDDLE]})"
+            page.formula(row, _HIGH, upper, row_values.high, scale=size)
         middle = (row_values.low + row_values.high) / 2
-        page.formula(row, _MIDDLE, f"({low}+{high})/2", middle)
+        page.formula(row, _MIDDLE, f"({low}+{high})/2", middle, scale=size)
         page.formula(
             row,
             _RESIDUAL,
