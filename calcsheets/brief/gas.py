@@ -66,11 +66,11 @@ def _single(table: Table, name: str, own: Stated) -> tuple[GasStatement, Stated]
     title = gas.title if gas else name or "gas by own properties"
     cautions = gas.cautions if gas else ()
     if own.given:
-        return GasStatement(title, (), "", None, cautions), own
+        return GasStatement(title, (), "", None, gas, cautions), own
     if gas is None:
         table.refuse("name", "the gas is not stated", "Give name or properties")
     values = tuple(_data(gas, "gas"))
-    return GasStatement(title, (), "", gas, cautions), Stated(values, ())
+    return GasStatement(title, (), "", gas, gas, cautions), Stated(values, ())
 
 
 def _asked(problem: UnknownGas) -> str:
@@ -126,7 +126,8 @@ def _mixture(
     components.sort(key=lambda part: part[0].key)  # the order of keys in a file means nothing
     title = name or ", ".join(f"{gas.title} {fraction}" for gas, fraction in components)
     cautions = tuple(dict.fromkeys(f"{g.title}: {c}" for g, _ in components for c in g.cautions))
-    return GasStatement(title, tuple(components), basis, None, cautions), Stated(tuple(given), ())
+    statement = GasStatement(title, tuple(components), basis, None, None, cautions)
+    return statement, Stated(tuple(given), ())
 
 
 def _fraction(root: Table, form: Form, component: str, gas: Gas, value: Decimal) -> Given:

@@ -149,6 +149,7 @@ class GasStatement:
         components: gas and fraction, by name of the gas; empty for a single gas.
         basis: ``mole`` or ``mass``.
         library: the gas whose data are used, ``None`` for a mixture or own properties.
+        named: the gas that the name means, also where the brief gives its own properties.
         cautions: what can hurt someone.
     """
 
@@ -156,6 +157,7 @@ class GasStatement:
     components: tuple[tuple[Gas, Decimal], ...]
     basis: str
     library: Gas | None
+    named: Gas | None
     cautions: tuple[str, ...]
 
 

@@ -199,6 +199,7 @@ def _read_path(
     root: Table, form: Form, stations: tuple[Station, ...]
 ) -> tuple[tuple[Leg, ...], list[Stated]]:
     names = [station.name for station in stations]
+    vessels = {station.name for station in stations if station.kind == "vessel"}
     legs: list[Leg] = []
     stated = []
     for table in root.tables("path"):
@@ -215,6 +216,7 @@ def _read_path(
             line=table.line(),
         )
         _check_leg(table, leg, names, legs)
+        _check_stream(table, leg, vessels, legs)
         legs.append(leg)
         stated.append(read_values(table, leg.name, form.leg, form.value))
     return tuple(legs), stated
@@ -255,6 +257,24 @@ def _check_leg(table: Table, leg: Leg, stations: list[str], before: list[Leg]) -
         table.refuse(
             "regime", f'"{leg.regime}" is no regime of the process "{leg.process}"', choice
         )
+
+
+def _check_stream(table: Table, leg: Leg, vessels: set[str], before: list[Leg]) -> None:
+    """Refuse a second stream into or out of a station: its mass flow would mean both."""
+    processes = load_library().processes
+    streams = [other for other in before if processes[other.process].one_stream]
+    if not processes[leg.process].one_stream:
+        return
+    for key, name, others in (
+        ("from", leg.start, [other.name for other in streams if other.start == leg.start]),
+        ("to", leg.end, [other.name for other in streams if other.end == leg.end]),
+    ):
+        if others and name not in vessels:
+            table.refuse(
+                key,
+                f'the stream of "{others[0]}" already passes "{name}", which cannot hold two flows',
+                f"Give this process a station of its own; same_as says what it has from {name}",
+            )
 
 
 def _require_places(stated: list[Stated], places: tuple[str, ...]) -> None:

@@ -149,8 +149,8 @@ def state_problem(brief: Brief, library: Library) -> Problem:
 
 
 def _equalities(brief: Brief) -> Iterator[tuple[Relation, Place]]:
-    for index, same in enumerate(brief.same_as):
-        yield _equality(same, index), _same_place(same)
+    for same in brief.same_as:
+        yield _equality(same), _same_place(same)
 
 
 def _mixture(brief: Brief) -> Iterator[tuple[Relation, Place]]:
@@ -186,12 +186,12 @@ def _leg_place(leg: Leg, legs: Mapping[str, Leg]) -> Place:
     return Place(leg.name, leg.title, roles, leg.branch)
 
 
-def _equality(same: SameAs, index: int) -> Relation:
+def _equality(same: SameAs) -> Relation:
     """An equality that the brief states, as a relation whose source is the brief."""
     left = Symbol(same.variable.symbol)
     right = Symbol(same.other.symbol, same.other.place)
     return Relation(
-        f"stated_equality_{index + 1}",
+        f"stated_equality_{same.variable.symbol}_{same.variable.place}",
         "Equality stated in the brief",
         left.equals(right),
         Source(same.source or "the brief", "", "", "brief"),

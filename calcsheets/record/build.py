@@ -56,7 +56,7 @@ from .model import (
     SourceRecord,
     StepRecord,
 )
-from .ranges import range_cautions
+from .ranges import property_cautions, range_cautions
 
 _MOST_DIGITS = 15
 
@@ -139,6 +139,7 @@ class _Builder:
                 dict.fromkeys(
                     (
                         *self.brief.cautions,
+                        *property_cautions(self.outcome),
                         *range_cautions(self.outcome),
                         *(_sentence(caution) for caution in self.brief.gas.cautions),
                         *(caution for relation in relations for caution in relation.cautions),

@@ -1,12 +1,15 @@
-"""Temperatures that leave the range in which the gas data hold."""
+"""Where a calculation leaves the gas data: by its properties, or by its temperatures."""
 
 from __future__ import annotations
 
 from collections.abc import Iterator
 
 from ..brief import GasStatement
-from ..quantities import Kind, catalogue
+from ..expressions import CONSTANTS
+from ..quantities import Kind, Variable, catalogue
 from ..solving import Outcome, midpoint
+
+_LARGEST_DIFFERENCE = 0.02
 
 
 def range_cautions(outcome: Outcome) -> Iterator[str]:
@@ -29,6 +32,32 @@ def range_cautions(outcome: Outcome) -> Iterator[str]:
                 f"lies outside {low:g} K to {high:g} K, where a constant heat capacity of "
                 f"{gas.title} holds within 2 %."
             )
+
+
+def property_cautions(outcome: Outcome) -> Iterator[str]:
+    """Say where properties that the brief gives are not those of the gas that it names."""
+    gas = outcome.problem.brief.gas
+    if gas.named is None or gas.library is not None:
+        return
+    molar_mass = float(gas.named.molar_mass.value.rational)
+    heat = float(gas.named.molar_heat.value.rational)
+    gamma = heat / (heat - float(CONSTANTS["R_u"].value or 0))
+    for symbol, data in (("gamma", gamma), ("M_w", molar_mass)):
+        variable = Variable(symbol, "gas")
+        if variable not in outcome.values:
+            continue
+        value = midpoint(outcome.values[variable])
+        if abs(value / data - 1) > _LARGEST_DIFFERENCE:
+            quantity = catalogue()[symbol]
+            yield (
+                f"{quantity.title.capitalize()} of {gas.title}: {value:.5g} is used, the gas data "
+                f"give {data:.5g}{_unit(quantity.unit)} at 25 °C. "
+                "Check that the value is that of this gas."
+            )
+
+
+def _unit(unit: str) -> str:
+    return "" if unit == "1" else f" {unit}"
 
 
 def _range(gas: GasStatement) -> tuple[float, float]:

@@ -219,7 +219,15 @@ CHAPTER = Chapter(
     "Isentropic flow",
     _SOUND + _STAGNATION + _CRITICAL + _PASSAGES,
     processes=(
-        Process(ISENTROPIC_FLOW, "flow between two stations without friction, heat or shock"),
-        Process(PASSAGE, "steady flow between two stations without heat exchange, losses open"),
+        Process(
+            ISENTROPIC_FLOW,
+            "flow between two stations without friction, heat or shock",
+            one_stream=True,
+        ),
+        Process(
+            PASSAGE,
+            "steady flow between two stations without heat exchange, losses open",
+            one_stream=True,
+        ),
     ),
 )

@@ -95,5 +95,5 @@ CHAPTER = Chapter(
             ),
         ),
     ),
-    processes=(Process(ORIFICE, "flow through an orifice or convergent nozzle"),),
+    processes=(Process(ORIFICE, "flow through an orifice or convergent nozzle", one_stream=True),),
 )  # fmt: skip

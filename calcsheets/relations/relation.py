@@ -167,11 +167,14 @@ class Process:
         name: name in a brief.
         title: the process in words.
         needs_through: whether it names the orifice that the gas passes.
+        one_stream: whether one steady stream passes it, so that the mass flow of a station of
+            the stream can be that of one such process before and one behind it only.
     """
 
     name: str
     title: str
     needs_through: bool = False
+    one_stream: bool = False
 
 
 @dataclass(frozen=True)

@@ -10,7 +10,8 @@ from .thermodynamics import CONSTANT_HEATS, PERFECT
 
 NORMAL_SHOCK = "normal shock"
 
-gamma, R, ds, c_p = symbols("gamma R ds c_p")
+gamma, R, ds = symbols("gamma R ds")
+A_1, A_2 = (symbols("A")[0].of(role) for role in (INLET, OUTLET))
 M_1, p_1, T_1, rho_1, p_01, A_cr1, u_1, a_cr = (
     s.of(INLET) for s in symbols("M p T rho p_0 A_cr u a_cr")
 )
@@ -88,6 +89,12 @@ CHAPTER = Chapter(
             naca_1135(),
         ),
         _shock(
+            "shock_area",
+            "A shock is thin: one area",
+            A_2.equals(A_1),
+            derived("Thickness of a shock is negligible"),
+        ),
+        _shock(
             "shock_entropy",
             "Entropy rise of a normal shock",
             ds.equals(-R * ln(p_02 / p_01)),
@@ -100,5 +107,11 @@ CHAPTER = Chapter(
             derived("Conservation of mass at constant stagnation temperature"),
         ),
     ),
-    processes=(Process(NORMAL_SHOCK, "a normal shock between two stations next to each other"),),
+    processes=(
+        Process(
+            NORMAL_SHOCK,
+            "a normal shock between two stations next to each other",
+            one_stream=True,
+        ),
+    ),
 )  # fmt: skip

@@ -83,6 +83,10 @@ _MASS = (
         ),
         _STREAM,
         assumptions=(PERFECT, CONSTANT_HEATS, "uniform stream"),
+        cautions=(
+            "A Mach number above 1 from the pressure behind a duct means that the duct chokes at "
+            "its end: the pressure there is then higher than was put in.",
+        ),
     ),
     Relation(
         "mass_flow_stagnation",

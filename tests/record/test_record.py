@@ -182,3 +182,15 @@ def test_a_temperature_outside_the_gas_data_is_a_caution() -> None:
     )
     assert not any("holds within 2 %" in caution for caution in record.cautions)
     assert any("holds within 2 %" in caution for caution in hot.cautions)
+
+
+def test_properties_of_another_gas_are_a_caution() -> None:
+    """γ = 1.30 for nitrogen, whose heat capacity at 25 °C gives 1.400."""
+    brief = calcsheets.read_brief(LETDOWN)
+    wrong = calcsheets.calculate(brief, inputs={"gamma@gas": "1.30"})
+    expected = (
+        "Ratio of specific heats of nitrogen: 1.3 is used, the gas data give 1.3996 at 25 °C. "
+        "Check that the value is that of this gas."
+    )
+    assert expected in wrong.cautions
+    assert not any("the gas data give" in c for c in calcsheets.calculate(brief).cautions)
