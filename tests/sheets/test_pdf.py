@@ -36,14 +36,18 @@ from calcsheets.expressions import (
 from calcsheets.record import Record
 from calcsheets.sheets.pdf import PAPERS, Attachment, pdf_bytes, render_html, write_pdf
 from calcsheets.sheets.pdf.fetching import FontFetcher
-from calcsheets.sheets.pdf.figures import equation_picture, result_html, working
+from calcsheets.sheets.pdf.figures import (
+    conversion_html,
+    equation_picture,
+    result_html,
+    working,
+)
 from calcsheets.sheets.pdf.picture import SMALLEST
 from calcsheets.sheets.printable import printable
 from calcsheets.sheets.templates import covered_characters, templates_folder
 from calcsheets.sheets.typesetting import symbol_text
+from tests.conftest import EXAMPLES, ROOT, require_program
 
-ROOT = Path(__file__).parent.parent.parent
-EXAMPLES = tuple(sorted((ROOT / "examples").glob("*.toml")))
 LET_DOWN = ROOT / "examples" / "receiver-letdown.toml"
 HOSTILE = Path(__file__).parent / "branch_and_shock.toml"
 SVG = "{http://www.w3.org/2000/svg}"
@@ -82,7 +86,10 @@ def hostile() -> Record:
 
 def text_of(path: Path) -> str:
     done = subprocess.run(
-        ["pdftotext", "-layout", str(path), "-"], check=True, capture_output=True, text=True
+        [require_program("pdftotext"), "-layout", str(path), "-"],
+        check=True,
+        capture_output=True,
+        text=True,
     )
     return done.stdout
 
@@ -369,7 +376,8 @@ class TestAnArchiveCanKeepIt:
 
     @pytest.mark.parametrize("name", ["pdffonts", "qpdf"])
     def test_its_parts_are_sound(self, pdf: Path, name: str) -> None:
-        command = {"pdffonts": [name, str(pdf)], "qpdf": [name, "--check", str(pdf)]}[name]
+        program = require_program(name)
+        command = [program, str(pdf)] if name == "pdffonts" else [program, "--check", str(pdf)]
         done = subprocess.run(command, check=True, capture_output=True, text=True)
         if name == "pdffonts":
             fonts = done.stdout.splitlines()[2:]
@@ -404,3 +412,38 @@ class TestTheSameRecordGivesTheSameBytes:
     ) -> None:
         pdf_bytes(hostile)
         assert [entry.getMessage() for entry in caplog.records] == []
+
+
+@pytest.mark.parametrize("path", EXAMPLES, ids=lambda path: path.stem)
+def test_a_conversion_fits_its_column_and_can_be_repeated(path: Path) -> None:
+    """The printed factor times the printed number gives the printed value to 7 digits."""
+    record = calcsheets.calculate(calcsheets.read_brief(path))
+    for item in record.inputs:
+        shown = re.sub(r"<[^>]+>", "", str(conversion_html(item)))
+        start, _, value = shown.replace("\u202f", "").partition(" = ")
+        assert len(start) <= 30, shown
+        if not value:
+            continue
+        start = start.replace("×", "*").replace("−", "-")
+        number = re.match(r"[-0-9.]+", value.replace("−", "-"))
+        assert number is not None
+        printed = float(number.group())
+        power = re.search(r"×.10(\d+)", value)
+        printed *= 10.0 ** int(power.group(1)) if power else 1.0
+        assert _arithmetic(start) == pytest.approx(printed, rel=1e-7), shown
+
+
+def _arithmetic(text: str) -> float:
+    """Products, sums and one bracket or fraction, as a person with a calculator would."""
+    if text.startswith("("):
+        inner, _, factor = text[1:].partition(") * ")
+        return _arithmetic(inner) * _arithmetic(factor.strip("()"))
+    for sign, combine in ((" + ", 1), (" - ", -1)):
+        left, found, right = text.partition(sign)
+        if found:
+            return _arithmetic(left) + combine * _arithmetic(right)
+    left, found, right = text.partition(" * ")
+    if found:
+        return _arithmetic(left) * _arithmetic(right.strip("()"))
+    above, found, below = text.partition("/")
+    return float(above) / float(below) if found else float(text)

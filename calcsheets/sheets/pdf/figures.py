@@ -26,6 +26,9 @@ from .picture import SIZE, Picture, picture
 WORKING_DIGITS = 8
 """Significant digits with which a person repeats a step."""
 
+_LONGEST_FACTOR = 14  # characters
+_LONG_FACTOR_DIGITS = 10
+
 _LONGEST_PLAIN = 5
 
 
@@ -122,7 +125,12 @@ def _plus(value: Fraction) -> Markup:
 
 
 def _exact(value: Fraction) -> Markup:
-    """A factor as a decimal where it has one, else as a fraction."""
+    """A factor in full where it is short, as a decimal or a fraction; else in ten digits.
+
+    Ten digits are more than a pocket check needs, and all of them fit the column.
+    """
     text = decimal_text(value)
+    if len(text) > _LONGEST_FACTOR:
+        return number_html(significant(float(value), _LONG_FACTOR_DIGITS))
     parts = [number_html(typed(part)) for part in text.split("/")]
     return Markup("/").join(parts) if len(parts) == 1 else Markup("({}/{})").format(*parts)
