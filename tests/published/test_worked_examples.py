@@ -13,7 +13,7 @@ import pytest
 
 import calcsheets
 from tests.published.examples import CASES, NOT_RUN, NOT_TAKEN, RATIOS, STEPS, TWICE, Case
-from tests.published.witnesses import Row, near, rows
+from tests.published.witnesses import near, rows
 
 EXAMPLES = {row["id"]: row for row in rows("worked_examples")}
 PUT = (*CASES, *RATIOS, *TWICE)
@@ -286,7 +286,7 @@ def test_every_input_of_a_source_is_taken_or_listed_with_a_reason() -> None:
         "farrell-choked-ratio": {"weight_H2", "weight_CH4"},
         "acfm-altitude": {"p", "relative_humidity", "p_sat"},
     }
-    texts = {example: "" for example in EXAMPLES}
+    texts = dict.fromkeys(EXAMPLES, "")
     texts |= {"balmer-16-8": TYRE, "evacuated-tank-fill": TANK}
     for case in (*PUT, *STEPS.values()):
         texts[case.id] += "\n".join((case.gas, case.a, case.b, case.leg, case.more))
