@@ -157,7 +157,7 @@ def test_relations_are_found_by_word_symbol_and_name() -> None:
     assert "choked_mass_flow" in run("relations", "choked").stdout
     assert "impulse_function" in run("relations", "F_i").stdout
     whole = run("relations", "area_mach").stdout
-    assert "A/A* = 1/M·(2/(γ + 1)·(1 + (γ − 1)/2·M²))^((γ + 1)/(2·(γ − 1)))" in whole
+    assert "A/A* = (1/M)·((2/(γ + 1))·(1 + ((γ − 1)/2)·M²))^((γ + 1)/(2·(γ − 1)))" in whole
     assert "limit: A/A* ≥ 1: no area is smaller than the critical one" in whole
 
 

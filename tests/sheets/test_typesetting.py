@@ -157,7 +157,7 @@ class TestPlainText:
     @pytest.mark.parametrize(
         ("name", "text"),
         [
-            ("stagnation_pressure", "p₀/p = (1 + (γ − 1)/2·M²)^(γ/(γ − 1))"),
+            ("stagnation_pressure", "p₀/p = (1 + ((γ − 1)/2)·M²)^(γ/(γ − 1))"),
             ("speed_of_sound", "a = √(γ·R·T)"),
             ("enthalpy_change", "Δh = c_p·(T₂ − T₁)"),
             ("first_law_steady", "q − w_s = Δh + (u₂² − u₁²)/2"),
@@ -165,7 +165,7 @@ class TestPlainText:
             ("shock_entropy", "Δs = −R·ln(p_0,2/p_0,1)"),
             ("velocity_ratio", "M*² = (γ + 1)·M²/(2 + (γ − 1)·M²)"),
             ("mach_angle", "sin(μ) = 1/M"),
-            ("circular_area", "A = π/4·d²"),
+            ("circular_area", "A = (π/4)·d²"),
             ("molar_flow", "ṁ = ṅ·M_w"),
             ("specific_gas_constant", "R = R_u/M_w"),
             (

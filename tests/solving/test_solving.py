@@ -50,8 +50,8 @@ def moves(name: str, unknown: str) -> list[str]:
 
 def test_an_unknown_is_isolated_move_by_move() -> None:
     assert moves("stagnation_temperature", "M") == [
-        "exchange sides: 1 + (γ − 1)/2·M² = T₀/T",
-        "subtract 1: (γ − 1)/2·M² = T₀/T − 1",
+        "exchange sides: 1 + ((γ − 1)/2)·M² = T₀/T",
+        "subtract 1: ((γ − 1)/2)·M² = T₀/T − 1",
         "divide by (γ − 1)/2: M² = (T₀/T − 1)·2/(γ − 1)",
         "take the positive square root: M = √((T₀/T − 1)·2/(γ − 1))",
     ]
@@ -67,7 +67,7 @@ def test_the_published_order_is_kept_in_a_solved_form() -> None:
 
 def test_an_unknown_below_a_fraction_and_inside_a_power() -> None:
     assert moves("stagnation_pressure", "p") == [
-        "take reciprocals and multiply by p₀: p = p₀/(1 + (γ − 1)/2·M²)^(γ/(γ − 1))"
+        "take reciprocals and multiply by p₀: p = p₀/(1 + ((γ − 1)/2)·M²)^(γ/(γ − 1))"
     ]
     assert moves("isentropic_T_p", "T.2")[1:] == [
         "raise to the power (γ − 1)/γ: T₂/T₁ = (p₂/p₁)^((γ − 1)/γ)",

@@ -235,11 +235,15 @@ def _number(value: Fraction) -> Piece:
 
 def _product(factors: tuple[Expr, ...], manner: Manner) -> Piece:
     pieces = tuple(piece(factor, manner) for factor in _flat(factors))
-    boxes = [p.at_least(Strength.QUOTIENT) for p in pieces]
+    # In a line a solidus is not followed by a product without brackets (ISO 80000-1, from
+    # memory): a/b·c would be read in two ways.
+    inner = Strength.PRODUCT if manner.linear else Strength.QUOTIENT
+    boxes = [p.at_least(inner) for p in pieces[:-1]] + [pieces[-1].at_least(Strength.QUOTIENT)]
     parts: list[Box] = [boxes[0]]
     for left, box in zip(pieces, boxes[1:], strict=False):
         parts += [Sign(_times(left, box, manner)), box]
-    holds_quotient = any(p.strength == Strength.QUOTIENT for p in pieces)
+    open_pieces = pieces[-1:] if manner.linear else pieces
+    holds_quotient = any(p.strength == Strength.QUOTIENT for p in open_pieces)
     strength = Strength.QUOTIENT if holds_quotient else Strength.PRODUCT
     return Piece(Row(tuple(parts)), strength)
 
