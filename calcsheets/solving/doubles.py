@@ -17,7 +17,7 @@ from .balls import Ball, OutsideDomainError, evaluate, exact_ball
 from .run import Outcome, StepOutcome
 
 _DOUBLE_BITS = 53
-_NOTHING_LEFT = 1e300
+_NOTHING_LEFT = 1e280
 _ROUNDINGS_OF_A_FUNCTION = 4  # engines round powers and logarithms less well than one operation
 
 
@@ -28,7 +28,7 @@ def double_errors(outcome: Outcome) -> Mapping[Variable, float]:
         outcome: a solved problem.
 
     Returns:
-        The bound by variable, in coherent SI; 1e300 where double arithmetic leaves nothing.
+        The bound by variable, in coherent SI; 1e280 where double arithmetic leaves nothing.
     """
     balls: dict[Variable, Ball] = {}
     errors: dict[Variable, float] = {}
@@ -56,8 +56,20 @@ def _in_doubles(step: StepOutcome, source: Instance, balls: Mapping[Variable, Ba
             return evaluate(solution.solved, values)
         values[unknown] = arb(solution.value.mid())
         difference = source.relation.published.left - source.relation.published.right
-        noise = evaluate(difference, values)
-        slope = evaluate(derivative(difference, unknown), values)
+        rate = derivative(difference, unknown)
+        noise, slope = evaluate(difference, values), evaluate(rate, values)
+        if slope.contains(0):
+            return _near_touching(
+                values[unknown], noise, slope, evaluate(derivative(rate, unknown), values)
+            )
         return values[unknown] - noise / slope
     except OutsideDomainError:
         return arb("nan")
+
+
+def _near_touching(root: Ball, noise: Ball, slope: Ball, curvature: Ball) -> Ball:
+    """Where a parabola that only touches zero may still be as small as the noise."""
+    rise, low, bend = abs(slope).upper(), abs(noise).upper(), abs(curvature).lower()
+    if not bend > 0:
+        return arb("nan")
+    return root + arb(0, (rise + (rise * rise + 2 * bend * low).sqrt()) / bend)

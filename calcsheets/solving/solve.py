@@ -338,11 +338,24 @@ def _candidate(question: Question, solved: Expr) -> Ball | None:
         return None
     if definition.low == 0 and not definition.zero and value <= 0:
         return None
-    values = {**question.values, question.unknown: value}
+    proved = _satisfies(question, question.values, value) or _satisfies_midway(question, solved)
+    return value if proved and _meets_conditions(question, value) else None
+
+
+def _satisfies(question: Question, known: Mapping[Symbol, Ball], value: Ball) -> bool:
+    values = {**known, question.unknown: value}
     difference = residual_of(question.relation, values)
     allowed = size_of(question.relation, values) * _RESIDUAL_SCALE
-    proved = difference.is_finite() and abs(difference) <= allowed
-    return value if proved and _meets_conditions(question, value) else None
+    return bool(difference.is_finite() and abs(difference) <= allowed)
+
+
+def _satisfies_midway(question: Question, solved: Expr) -> bool:
+    """Whether a solved form is a root at the middle of wide inputs, as a touching root is one."""
+    middles = {symbol: arb(ball.mid()) for symbol, ball in question.values.items()}
+    try:
+        return _satisfies(question, middles, evaluate(solved, middles))
+    except OutsideDomainError:
+        return False
 
 
 def _no_root(question: Question) -> NoRoot:
