@@ -119,3 +119,53 @@ def test_a_root_near_the_throat_is_bisected_as_far_as_doubles_reach() -> None:
     book = make_workbook(record)
     assert require_same_values(book.content, book.formulas) > 0
     assert {finding.verdict for finding in check_record(record)} == {"passed"}
+
+
+DUCT = """
+[calculation]
+number = "T-9"
+revision = "0"
+date = "2026-01-02"
+title = "At the throat"
+purpose = "What is the pressure there?"
+originator = "A"
+
+[gas]
+gamma = "1.4"
+R = "287 J/(kg*K)"
+
+[stations.a]
+A = "1 m2"
+A_cr = "1 m2"
+p_0 = "5 bar(a)"
+T_0 = "300 K"
+branch = "BRANCH"
+
+[wanted]
+"M@a" = {}
+"p@a" = { unit = "bar(a)" }
+"""
+
+
+@pytest.mark.parametrize("branch", ["subsonic", "supersonic"])
+def test_a_calculation_goes_on_from_the_critical_area(branch: str) -> None:
+    """p*/p_0 at γ = 1.4 is 0.528282 (NACA Report 1135, table I, from memory).
+
+    The root only touches zero: its enclosure is wide, and doubles find it to half their digits.
+    """
+    record = calcsheets.calculate(calcsheets.parse_brief(DUCT.replace("BRANCH", branch)))
+    assert record.results[0].value == pytest.approx(1, abs=1e-11)
+    assert record.results[1].value == pytest.approx(5 * 0.528282, rel=1e-6)
+    mach = step(record, "M@a")
+    assert 1e-9 < mach.double_error < 1e-5
+    assert 9 <= mach.certified_digits < 15
+    book = make_workbook(record)
+    assert require_same_values(book.content, book.formulas) > 0
+
+
+def test_a_step_of_which_doubles_leave_nothing_does_not_stop_the_workbook() -> None:
+    """T and T_0 differ in the 20th digit only: in doubles the Mach number may be anything."""
+    record = solved("299.99999999999999999999")
+    assert step(record, "M@a").value == pytest.approx(1.2910e-11, rel=1e-3)
+    book = make_workbook(record)
+    assert require_same_values(book.content, book.formulas) > 0

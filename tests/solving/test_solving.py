@@ -4,9 +4,9 @@ from __future__ import annotations
 
 import itertools
 import random
-from collections.abc import Mapping
 from dataclasses import replace
 from fractions import Fraction
+from typing import Any
 
 import mpmath
 import pytest
@@ -14,13 +14,14 @@ from scipy.optimize import brentq
 
 import calcsheets
 from calcsheets.checking.decimals import evaluate_decimal
-from calcsheets.errors import NoRoot, SeveralRoots
+from calcsheets.errors import NoRoot, SeveralRoots, UndecidedRoots
 from calcsheets.expressions import Symbol, symbols
-from calcsheets.record import Record
+from calcsheets.record import Record, StepRecord
 from calcsheets.relations import Limit, load_library
 from calcsheets.sheets.typesetting import plain_text
 from calcsheets.solving import Question, Solution, exact_ball, isolate, midpoint, solve
 from calcsheets.solving.balls import working_precision
+from calcsheets.solving.polynomials import polynomial_form
 from calcsheets.solving.roots import isolate_roots
 from tests.conftest import EXAMPLES
 
@@ -80,6 +81,41 @@ def test_a_logarithm_is_undone() -> None:
     assert last.startswith("take reciprocals and multiply by p_0,1: p_0,2 = p_0,1/exp(")
 
 
+def collected(name: str, unknown: str) -> list[str]:
+    """The moves to a polynomial in words, each with the equation that it leads to."""
+    relation = RELATIONS[name]
+    symbol = next(s for s in relation.symbols if str(s) == unknown)
+    form = polynomial_form(relation.published, symbol)
+    assert form is not None
+    return [f"{move.action}: {plain_text(move.result)}" for move in form.moves]
+
+
+def test_an_unknown_that_occurs_twice_is_collected() -> None:
+    assert collected("c_p_from_gamma", "gamma") == ["collect powers of: (R − c_p)·γ + c_p = 0"]
+    assert collected("shock_mach", "M.1") == [
+        "collect powers of: (2·γ·M₂² + 1 − γ)·M₁² + M₂² − γ·M₂² − 2 = 0"
+    ]
+
+
+def test_powers_around_a_polynomial_are_undone_first() -> None:
+    assert collected("polytropic_T_p", "n") == [
+        "exchange sides: (p₂/p₁)^((n − 1)/n) = T₂/T₁",
+        "take logarithms and divide by: (n − 1)/n = ln(T₂/T₁)/ln(p₂/p₁)",
+        "collect powers of: (ln(T₂/T₁)/ln(p₂/p₁) − 1)·n + 1 = 0",
+    ]
+
+
+def test_a_root_over_the_unknown_is_squared_away_and_the_false_root_is_dropped() -> None:
+    assert collected("mass_flow_static", "M")[0] == (
+        "square: ṁ² = A²·p²·M²·(γ/(R·T₀))·(1 + ((γ − 1)/2)·M²)"
+    )
+    known = {"mdot": "1", "A": "0.01", "p": "100000", "gamma": "1.4", "R": "287", "T_0": "300"}
+    found = answer("mass_flow_static", "M", **known)
+    assert found.method == "polynomial"
+    assert found.other_roots == ()
+    assert midpoint(found.value) == pytest.approx(0.246498692614, rel=1e-11)
+
+
 def test_an_area_ratio_without_a_branch_is_a_question_with_both_roots() -> None:
     """0.3059 and 2.1972 at A/A* = 2 (NACA Report 1135, table I and II, from memory)."""
     with pytest.raises(SeveralRoots) as caught:
@@ -102,6 +138,48 @@ def test_the_stated_branch_is_taken_and_the_other_root_is_kept(
     assert [midpoint(root.value) for root in found.other_roots] == [pytest.approx(other)]
     assert found.other_roots[0].reason == f"not on the stated branch, {branch}"
     assert found.branch == branch
+
+
+@pytest.mark.parametrize(("branch", "ratio"), [("subsonic", 0.9372), ("supersonic", 0.0939)])
+def test_the_branch_decides_a_pressure_ten_times_over(branch: str, ratio: float) -> None:
+    """p/p_0 at A/A* = 2 (NACA Report 1135, tables I and II, from memory)."""
+    mach = midpoint(answer("area_mach", "M", branch, A="2", A_cr="1", gamma="1.4").value)
+    found = answer("stagnation_pressure", "p", p_0="1", M=f"{mach:.15f}", gamma="1.4")
+    assert midpoint(found.value) == pytest.approx(ratio, abs=0.00005)
+
+
+def test_a_mass_flow_below_the_critical_one_has_two_mach_numbers() -> None:
+    known = {"mdot": "2", "A": "0.01", "p_0": "100000", "gamma": "1.4", "R": "287", "T_0": "300"}
+    with pytest.raises(SeveralRoots) as caught:
+        answer("mass_flow_stagnation", "M", **known)
+    low, high = (float(root) for root in caught.value.roots)
+    assert low < 1 < high
+    assert midpoint(answer("mass_flow_stagnation", "M", "subsonic", **known).value) < 1
+    assert midpoint(answer("mass_flow_stagnation", "M", "supersonic", **known).value) > 1
+
+
+def test_more_than_the_critical_mass_flow_has_no_mach_number() -> None:
+    """Choked flux at γ = 1.4: 0.6847 p_0/√(R T_0) (from memory), here 2.333 kg/s."""
+    known = {"mdot": "2.34", "A": "0.01", "p_0": "100000", "gamma": "1.4", "R": "287",
+             "T_0": "300"}  # fmt: skip
+    with pytest.raises(NoRoot) as caught:
+        answer("mass_flow_stagnation", "M", **known)
+    reached = float(caught.value.reached.split()[-1])
+    assert reached == pytest.approx(0.6847 * 0.01 * 100000 / (287 * 300) ** 0.5, rel=1e-4)
+
+
+def test_a_pitot_reading_below_that_of_sonic_flow_has_no_shock() -> None:
+    """At M = 1 the ratio is 1/0.5283 = 1.893 (NACA Report 1135, table I, from memory)."""
+    with pytest.raises(NoRoot) as caught:
+        answer("rayleigh_pitot", "M__1", p_0__2="1.64", p__1="1", gamma="1.4")
+    assert "there the relation reaches 1.892929 to" in str(caught.value)
+
+
+def test_a_shock_without_strength_is_not_called_impossible() -> None:
+    """M = 1 is a threefold root; the search says that it found no end, not that there is none."""
+    with pytest.raises(UndecidedRoots) as caught:
+        answer("shock_stagnation_pressure", "M__1", p_0__1="1", p_0__2="1", gamma="1.4")
+    assert "nothing is known about its roots" in str(caught.value)
 
 
 def test_an_area_below_the_critical_one_has_no_root() -> None:
@@ -227,15 +305,25 @@ def test_each_enclosure_holds_the_value_in_50_digits(record: Record) -> None:
             for item in record.inputs
         }
         for step in record.steps:
-            if step.solved is None:
-                if step.value is not None:
-                    values[step.key] = (mpmath.mpf(step.lower) + mpmath.mpf(step.upper)) / 2
+            if step.value is None:
                 continue
-            known: Mapping[Symbol, object] = {o.symbol: values[o.key] for o in step.operands}
-            values[step.key] = evaluate_decimal(step.solved, known)
-            margin = abs(values[step.key]) * mpmath.mpf("1e-20")
+            known = {o.symbol: values[o.key] for o in step.operands}
+            value = _root(record, step, known) if step.solved is None else None
+            values[step.key] = value or evaluate_decimal(step.solved, known)
+            margin = abs(values[step.key]) * mpmath.mpf("1e-24")  # bounds are kept in 25 digits
             assert mpmath.mpf(step.lower) - margin <= values[step.key], step.key
             assert values[step.key] <= mpmath.mpf(step.upper) + margin, step.key
+
+
+def _root(record: Record, step: StepRecord, known: dict[Symbol, Any]) -> Any:
+    published = record.relation(step.relation).published
+
+    def difference(at: Any) -> Any:
+        values = {**known, step.symbol: at}
+        return evaluate_decimal(published.left, values) - evaluate_decimal(published.right, values)
+
+    near = mpmath.mpf(step.value)
+    return mpmath.findroot(difference, (near * 0.999, near * 1.001), solver="anderson", tol=1e-45)
 
 
 def _mpf(text: str) -> object:
