@@ -1,0 +1,9 @@
+"""The entries of the vocabulary, by subject: one module for each, in the order of the list."""
+
+from types import ModuleType
+
+from . import changes, flow, gas, states, vessels
+
+SUBJECTS: tuple[ModuleType, ...] = (states, gas, flow, changes, vessels)
+
+__all__ = ["SUBJECTS"]

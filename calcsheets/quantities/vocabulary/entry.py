@@ -1,0 +1,37 @@
+"""How an entry of the vocabulary is written."""
+
+from __future__ import annotations
+
+from fractions import Fraction
+
+from ..dimension import Dimension
+from ..quantity import Kind, Notation, Quantity
+
+
+def quantity(
+    symbol: str,
+    title: str,
+    notation: Notation,
+    dimension: Dimension,
+    unit: str,
+    low: str = "0",
+    high: str = "1e12",
+    kind: Kind = Kind.PLAIN,
+    reference: str = "",
+    home: str = "station",
+    zero: bool = False,
+) -> Quantity:
+    """Return a quantity; its bounds are written as decimals. See :class:`Quantity`."""
+    return Quantity(
+        symbol,
+        title,
+        notation,
+        dimension,
+        Fraction(low),
+        Fraction(high),
+        unit,
+        kind,
+        reference,
+        home,
+        zero,
+    )
