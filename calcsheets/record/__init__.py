@@ -10,20 +10,22 @@ from .context import (
 )
 from .model import (
     SCHEMA,
-    AlternativeRecord,
     ConsistencyRecord,
     CriterionRecord,
-    HalvingRecord,
     InputRecord,
+    Record,
+    RelationRecord,
+    ResultRecord,
+    SourceRecord,
+)
+from .step_model import (
+    AlternativeRecord,
+    HalvingRecord,
     LimitRecord,
     MoveRecord,
     Operand,
-    Record,
     RegimeTest,
-    RelationRecord,
-    ResultRecord,
     RootRecord,
-    SourceRecord,
     StepRecord,
 )
 

@@ -7,7 +7,7 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 
-from ..expressions import Condition, Equation, Expr, Symbol
+from ..expressions import Condition, Equation, Symbol
 from .context import (
     AssumptionRecord,
     FieldRecord,
@@ -15,6 +15,7 @@ from .context import (
     ReferenceRecord,
     StationRecord,
 )
+from .step_model import StepRecord
 
 SCHEMA = "calcsheets-record/1"
 
@@ -78,189 +79,6 @@ class InputRecord:
     source: str
     tolerance: str
     status: str
-
-
-@dataclass(frozen=True)
-class Operand:
-    """One known quantity of a step.
-
-    Attributes:
-        symbol: the symbol in the published form.
-        key: the variable that it means here.
-        title: quantity in words.
-        place: place in words.
-        value: value in coherent SI.
-        unit: coherent SI unit.
-        input: number of the input that it is, 0 if it is none.
-        step: number of the step that gave it, 0 if none did.
-    """
-
-    symbol: Symbol
-    key: str
-    title: str
-    place: str
-    value: float
-    unit: str
-    input: int
-    step: int
-
-
-@dataclass(frozen=True)
-class MoveRecord:
-    """One algebraic action on both sides."""
-
-    action: str
-    operand: Expr | None
-    result: Equation
-
-
-@dataclass(frozen=True)
-class LimitRecord:
-    """One limit of a relation at this step.
-
-    Attributes:
-        condition: what must hold.
-        reason: why.
-        left: value of the left side; ``None`` where it could not be evaluated.
-        right: value of the right side; likewise.
-        holds: whether it holds; ``None`` where it could not be evaluated.
-    """
-
-    condition: Condition
-    reason: str
-    left: float | None
-    right: float | None
-    holds: bool | None
-
-
-@dataclass(frozen=True)
-class RootRecord:
-    """A root that was not taken, and why."""
-
-    value: float
-    reason: str
-
-
-@dataclass(frozen=True)
-class HalvingRecord:
-    """One row of the bisection that leads to a root.
-
-    Attributes:
-        low: lower end of the interval.
-        high: upper end.
-        residual: difference of both sides at the middle, over the sum of their magnitudes.
-    """
-
-    low: float
-    high: float
-    residual: float
-
-
-@dataclass(frozen=True)
-class AlternativeRecord:
-    """What gives the same quantity in the other regime, for a workbook that stays alive.
-
-    Attributes:
-        regime: the regime.
-        relation: name of the relation.
-        solved: its solved form.
-        operands: its known quantities.
-    """
-
-    regime: str
-    relation: str
-    solved: Expr
-    operands: tuple[Operand, ...]
-
-
-@dataclass(frozen=True)
-class RegimeTest:
-    """A regime test with its outcome.
-
-    Attributes:
-        condition: the test.
-        left: value of the left side.
-        right: value of the right side.
-        when_true: regime if it holds.
-        when_false: regime if it does not.
-        outcome: the regime.
-        assumed: whether the regime was tried first and confirmed by the test afterwards.
-    """
-
-    condition: Condition
-    left: float
-    right: float
-    when_true: str
-    when_false: str
-    outcome: str
-    assumed: bool
-
-
-@dataclass(frozen=True)
-class StepRecord:
-    """One line of the calculation.
-
-    Attributes:
-        number: number on the sheet, from 1.
-        key: variable that the step gives.
-        symbol: its symbol in the published form.
-        title: quantity in words.
-        place: place in words.
-        relation: name of the relation or regime test, see ``Record.relations``.
-        operands: known quantities, in order of appearance.
-        method: ``moves``, ``polynomial``, ``root`` or ``regime``.
-        moves: algebraic moves from the published to the solved form.
-        solved: the solved form; ``None`` for a root or a regime.
-        value: value in coherent SI; ``None`` for a regime.
-        unit: coherent SI unit.
-        lower: decimal below which the exact value cannot lie.
-        upper: decimal above which it cannot lie.
-        certified_digits: significant digits that the enclosure certifies, at most 15.
-        double_error: bound on the absolute error when the steps are computed in doubles, as
-            a workbook does.
-        residual: bound on the relative difference of both sides of the published form.
-        limits: limits of the relation.
-        branch: branch on which the value lies, empty for none.
-        bracket: interval in which the root is the only one, empty for closed forms.
-        other_roots: roots not taken.
-        halvings: the course of a bisection in the bracket, empty for closed forms.
-        regime_key: variable of the regime on which the relation depends, empty for none.
-        regime: the regime in which the relation holds, empty for none.
-        alternatives: the same quantity in other regimes.
-        test: the regime test; ``None`` for a relation.
-    """
-
-    number: int
-    key: str
-    symbol: Symbol
-    title: str
-    place: str
-    relation: str
-    operands: tuple[Operand, ...]
-    method: str
-    moves: tuple[MoveRecord, ...]
-    solved: Expr | None
-    value: float | None
-    unit: str
-    lower: str
-    upper: str
-    certified_digits: int
-    double_error: float
-    residual: float
-    limits: tuple[LimitRecord, ...]
-    branch: str
-    bracket: tuple[float, ...]
-    other_roots: tuple[RootRecord, ...]
-    halvings: tuple[HalvingRecord, ...]
-    regime_key: str
-    regime: str
-    alternatives: tuple[AlternativeRecord, ...]
-    test: RegimeTest | None
-
-    @property
-    def within_limits(self) -> bool:
-        """Whether no limit is known to be exceeded."""
-        return all(limit.holds is not False for limit in self.limits)
 
 
 @dataclass(frozen=True)

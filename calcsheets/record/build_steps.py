@@ -1,0 +1,233 @@
+"""The record of each step."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Iterator, Mapping
+from dataclasses import dataclass
+from decimal import ROUND_HALF_EVEN, Context
+
+from ..expressions import Symbol
+from ..planning import Instance, RegimeInstance
+from ..quantities import Variable, catalogue
+from ..solving import (
+    Ball,
+    Move,
+    OtherRoot,
+    Outcome,
+    Solution,
+    StepOutcome,
+    compare,
+    decimal_bounds,
+    evaluate,
+    isolate,
+    midpoint,
+    size_of,
+)
+from .step_model import (
+    AlternativeRecord,
+    HalvingRecord,
+    LimitRecord,
+    MoveRecord,
+    Operand,
+    RegimeTest,
+    RootRecord,
+    StepRecord,
+)
+
+_MOST_DIGITS = 15
+
+
+@dataclass(frozen=True)
+class Numbers:
+    """Number of each input and step on the sheet."""
+
+    inputs: Mapping[Variable, int]
+    steps: Mapping[Variable, int]
+
+    def __contains__(self, variable: object) -> bool:
+        return variable in self.inputs or variable in self.steps
+
+
+@dataclass(frozen=True)
+class StepRecords:
+    """Makes the record of any step of a solved problem.
+
+    Attributes:
+        outcome: the solved problem.
+        double_errors: bound on the error of each value in doubles.
+        where: number of each input and step.
+    """
+
+    outcome: Outcome
+    double_errors: Mapping[Variable, float]
+    where: Numbers
+
+    def step(self, step: StepOutcome) -> StepRecord:
+        source = step.edge.source
+        if isinstance(source, RegimeInstance):
+            return self._regime_step(step, source)
+        solution = step.solution
+        if solution is None or step.edge.unknown is None:
+            raise ValueError(f"step {step.edge.target} was not solved")
+        quantity = catalogue()[step.edge.target.symbol]
+        lower, upper = decimal_bounds(solution.value)
+        condition = source.regime_variable
+        return StepRecord(
+            number=self.where.steps[step.edge.target],
+            key=str(step.edge.target),
+            symbol=step.edge.unknown,
+            title=quantity.title,
+            place=self.outcome.problem.title(step.edge.target),
+            relation=source.relation.name,
+            operands=self._operands(source, source.relation.symbols, step.edge.unknown),
+            method=solution.method,
+            moves=tuple(_move(move) for move in solution.moves),
+            solved=solution.solved,
+            value=midpoint(solution.value),
+            unit=quantity.unit,
+            lower=lower,
+            upper=upper,
+            certified_digits=certified_digits(lower, upper),
+            double_error=self.double_errors[step.edge.target],
+            residual=self._relative_residual(source, solution),
+            limits=tuple(self._limits(source)),
+            branch=solution.branch,
+            bracket=tuple(float(end) for end in solution.bracket or ()),
+            other_roots=tuple(_root(root) for root in solution.other_roots),
+            halvings=tuple(HalvingRecord(h.low, h.high, h.residual) for h in solution.halvings),
+            regime_key="" if condition is None else str(condition),
+            regime=source.relation.regime,
+            alternatives=tuple(self._alternatives(source, step)),
+            test=None,
+        )
+
+    def _regime_step(self, step: StepOutcome, source: RegimeInstance) -> StepRecord:
+        found = step.regime
+        if found is None:
+            raise ValueError(f"step {step.edge.target} was not decided")
+        regime = source.regime
+        return StepRecord(
+            number=self.where.steps[step.edge.target],
+            key=str(step.edge.target),
+            symbol=Symbol("regime"),
+            title=regime.title,
+            place=self.outcome.problem.title(step.edge.target),
+            relation=regime.name,
+            operands=self._operands(source, regime.symbols, None),
+            method="regime",
+            moves=(),
+            solved=None,
+            value=None,
+            unit="",
+            lower="",
+            upper="",
+            certified_digits=0,
+            double_error=0.0,
+            residual=0.0,
+            limits=(),
+            branch="",
+            bracket=(),
+            other_roots=(),
+            halvings=(),
+            regime_key="",
+            regime="",
+            alternatives=(),
+            test=RegimeTest(
+                condition=regime.condition,
+                left=midpoint(found.left),
+                right=midpoint(found.right),
+                when_true=regime.when_true,
+                when_false=regime.when_false,
+                outcome=found.regime,
+                assumed=found.assumed,
+            ),
+        )
+
+    def _operands(
+        self,
+        source: Instance | RegimeInstance,
+        symbols: Iterable[Symbol],
+        unknown: Symbol | None,
+    ) -> tuple[Operand, ...]:
+        found = []
+        for symbol in symbols:
+            if symbol == unknown:
+                continue
+            variable = source.place.variable(symbol)
+            quantity = symbol.definition
+            found.append(
+                Operand(
+                    symbol=symbol,
+                    key=str(variable),
+                    title=quantity.title,
+                    place=self.outcome.problem.title(variable),
+                    value=midpoint(self.outcome.values[variable]),
+                    unit=quantity.unit,
+                    input=self.where.inputs.get(variable, 0),
+                    step=self.where.steps.get(variable, 0),
+                )
+            )
+        return tuple(found)
+
+    def _relative_residual(self, source: Instance, solution: Solution) -> float:
+        scale = size_of(source.relation, self._values(source, source.relation.symbols))
+        return 0.0 if scale == 0 else float((abs(solution.residual) / scale).upper())
+
+    def _values(
+        self, source: Instance | RegimeInstance, symbols: Iterable[Symbol]
+    ) -> dict[Symbol, Ball]:
+        bound = {symbol: source.place.variable(symbol) for symbol in symbols}
+        values = self.outcome.values
+        return {symbol: values[v] for symbol, v in bound.items() if v in values}
+
+    def _limits(self, source: Instance) -> Iterator[LimitRecord]:
+        for limit in source.relation.limits:
+            condition = limit.condition
+            values = self._values(source, condition.symbols)
+            if set(values) < set(condition.symbols):
+                yield LimitRecord(condition, limit.reason, None, None, None)
+                continue
+            yield LimitRecord(
+                condition,
+                limit.reason,
+                midpoint(evaluate(condition.left, values)),
+                midpoint(evaluate(condition.right, values)),
+                compare(condition, values) is not False,
+            )
+
+    def _alternatives(self, source: Instance, step: StepOutcome) -> Iterator[AlternativeRecord]:
+        """The same quantity in the other regimes, where everything that it needs is there."""
+        for other in self.outcome.problem.instances:
+            if (
+                (other.place is not source.place and other.place.name != source.place.name)
+                or other.regime_variable != source.regime_variable
+                or other.relation.regime in ("", source.relation.regime)
+            ):
+                continue
+            unknown = next((s for s, v in other.binding.items() if v == step.edge.target), None)
+            if unknown is None:
+                continue
+            others = [v for v in other.binding.values() if v != step.edge.target]
+            isolation = isolate(other.relation.published, unknown)
+            if isolation is not None and all(v in self.where for v in others):
+                operands = self._operands(other, other.relation.symbols, unknown)
+                yield AlternativeRecord(
+                    other.relation.regime, other.relation.name, isolation.solved, operands
+                )
+
+
+def _move(move: Move) -> MoveRecord:
+    return MoveRecord(move.action, move.operand, move.result)
+
+
+def _root(root: OtherRoot) -> RootRecord:
+    return RootRecord(midpoint(root.value), root.reason)
+
+
+def certified_digits(lower: str, upper: str) -> int:
+    """Return to how many significant digits two bounds agree when rounded, at most 15."""
+    for digits in range(_MOST_DIGITS, 0, -1):
+        context = Context(prec=digits, rounding=ROUND_HALF_EVEN)
+        if context.create_decimal(lower) == context.create_decimal(upper):
+            return digits
+    return 0
