@@ -12,6 +12,7 @@
     ├── SolvingError             one planned relation gives no value
     │   ├── NoRoot               with the range that the relation can reach
     │   ├── SeveralRoots         with every root, and the question to answer
+    │   ├── OutsideLimit         a relation means nothing at the values reached
     │   └── UndecidedRoots       the search did not come to an end
     ├── CheckError               an independent engine disagrees with the program
     └── OutputError              a file cannot be written
@@ -22,6 +23,7 @@ says where, what, which limit, and what to do.
 
 from __future__ import annotations
 
+import math
 from dataclasses import dataclass
 
 
@@ -150,7 +152,8 @@ class ContradictoryInputs(PlanningError):
         derived: the value that the other inputs lead to, with unit.
         relation: title of the relation that leads to it.
         inputs: keys of the inputs that lead to it.
-        difference: relative difference of the sides of the relation.
+        difference: relative difference of the sides of the relation; infinite where one of
+            them has no value.
     """
 
     quantity: str
@@ -162,10 +165,15 @@ class ContradictoryInputs(PlanningError):
 
     def __str__(self) -> str:
         lead = "lead" if len(self.inputs) > 1 else "leads"
+        sides = (
+            f"the two sides differ by {abs(self.difference):.3%}"
+            if math.isfinite(self.difference)
+            else "with these values one of its sides has none"
+        )
         return (
             f"{self.quantity} is {self.given}, but {', '.join(self.inputs)} {lead} to "
-            f"{self.derived} (relation: {self.relation}); the two sides differ by "
-            f"{abs(self.difference):.3%}. Remove one of these inputs, or correct it."
+            f"{self.derived} (relation: {self.relation}); {sides}. "
+            "Remove one of these inputs, or correct it."
         )
 
 
@@ -278,6 +286,27 @@ class UndecidedRoots(SolvingError):
         return (
             f"{self.relation}: the search for {self.unknown} within {self.bounds} did not come "
             f"to an end, so nothing is known about its roots. Give {self.unknown}, or other inputs."
+        )
+
+
+@dataclass(eq=False)
+class OutsideLimit(SolvingError):
+    """A relation means nothing at the values that the calculation came to.
+
+    Attributes:
+        relation: title of the relation.
+        unknown: key of the quantity that it gave.
+        limit: the limit that is not met, as a clause.
+    """
+
+    relation: str
+    unknown: str
+    limit: str
+
+    def __str__(self) -> str:
+        return (
+            f"{self.relation}, for {self.unknown}: {self.limit}, and the inputs lead to values "
+            "outside that. Check the inputs of this step."
         )
 
 

@@ -18,6 +18,7 @@ from calcsheets.errors import (
     NoRoot,
     NotEnoughInputs,
     OutputError,
+    OutsideLimit,
     PlanningError,
     SeveralRoots,
     SolvingError,
@@ -86,6 +87,16 @@ CASES: list[tuple[CalcsheetsError, str]] = [
         SeveralRoots("Area and Mach number", "M@x", ("0.3", "2.2"), (), "stations.x"),
         "Area and Mach number: M@x may be 0.3 or 2.2. Which is meant? Give M@x, or an input that "
         "decides it.",
+    ),
+    (
+        OutsideLimit("Normal shock", "p@b", "a shock stands only in supersonic flow"),
+        "Normal shock, for p@b: a shock stands only in supersonic flow, and the inputs lead to "
+        "values outside that. Check the inputs of this step.",
+    ),
+    (
+        ContradictoryInputs("p@a", "2 Pa", "no value", "Bernoulli", ("p@b",), float("inf")),
+        "p@a is 2 Pa, but p@b leads to no value (relation: Bernoulli); with these values one of "
+        "its sides has none. Remove one of these inputs, or correct it.",
     ),
     (
         UndecidedRoots("A relation", "M@x", "0 to 1"),

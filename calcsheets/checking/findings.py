@@ -10,7 +10,7 @@ from types import MappingProxyType
 from typing import Any
 
 from ..expressions import Condition, Equation, Expr, Sum, Symbol
-from ..record import InputRecord, Record, ResultRecord, StepRecord
+from ..record import InputRecord, LimitRecord, Record, ResultRecord, StepRecord
 from .decimals import evaluate_decimal
 
 _TOLERANCE = 1e-12
@@ -66,9 +66,8 @@ def _check_step(record: Record, step: StepRecord) -> Iterator[Finding]:
     import mpmath
 
     part = f"step {step.number}"
-    stale = [
-        operand.key for operand in step.operands if operand.value != _value_of(record, operand.key)
-    ]
+    operands = (*step.operands, *step.limit_operands)
+    stale = [operand.key for operand in operands if operand.value != _value_of(record, operand.key)]
     if stale:
         yield Finding(part, step.key, "failed", f"{stale[0]} is not the value of its origin")
         return
@@ -82,11 +81,20 @@ def _check_step(record: Record, step: StepRecord) -> Iterator[Finding]:
         return
     values[step.symbol] = mpmath.mpf(step.value)
     yield _check_equation(part, step.key, published, values)
+    values |= {operand.symbol: mpmath.mpf(operand.value) for operand in step.limit_operands}
     for limit in step.limits:
-        if limit.holds is not None:
-            holds = _holds(limit.condition, values)
-            verdict = "passed" if holds == limit.holds else "failed"
-            yield Finding(part, step.key, verdict, f"limit evaluated again: {limit.reason}")
+        yield _check_limit(part, step, limit, values)
+
+
+def _check_limit(
+    part: str, step: StepRecord, limit: LimitRecord, values: Mapping[Symbol, Any]
+) -> Finding:
+    if not set(limit.condition.symbols) <= set(values):
+        reason = f"limit needs a value that the calculation does not hold: {limit.reason}"
+        verdict = "not possible" if limit.holds is None else "failed"
+        return Finding(part, step.key, verdict, reason)
+    verdict = "passed" if _holds(limit.condition, values) == limit.holds else "failed"
+    return Finding(part, step.key, verdict, f"limit evaluated again: {limit.reason}")
 
 
 def _check_test(part: str, step: StepRecord, values: Mapping[Symbol, Any]) -> Finding:

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Mapping
+from collections.abc import Iterable, Iterator, Mapping
 from dataclasses import dataclass
 from functools import cached_property
 
@@ -36,6 +36,10 @@ class Place:
             return Variable(symbol.quantity, home)
         return Variable(symbol.quantity, self.roles.get(symbol.role, symbol.role))
 
+    def variables(self, symbols: Iterable[Symbol]) -> dict[Symbol, Variable]:
+        """Return the variable of each of several symbols."""
+        return {symbol: self.variable(symbol) for symbol in symbols}
+
 
 @dataclass(frozen=True)
 class Instance:
@@ -54,7 +58,7 @@ class Instance:
     @cached_property
     def binding(self) -> Mapping[Symbol, Variable]:
         """The variable of each symbol of the relation."""
-        return {symbol: self.place.variable(symbol) for symbol in self.relation.symbols}
+        return self.place.variables(self.relation.symbols)
 
     @cached_property
     def key(self) -> tuple[int, str, str]:
@@ -80,7 +84,7 @@ class RegimeInstance:
     @cached_property
     def binding(self) -> Mapping[Symbol, Variable]:
         """The variable of each symbol of the test."""
-        return {symbol: self.place.variable(symbol) for symbol in self.regime.symbols}
+        return self.place.variables(self.regime.symbols)
 
     @cached_property
     def key(self) -> tuple[int, str, str]:

@@ -91,6 +91,7 @@ class StepRecords:
             double_error=self.double_errors[step.edge.target],
             residual=self._relative_residual(source, solution),
             limits=tuple(self._limits(source)),
+            limit_operands=self._limit_operands(source),
             branch=solution.branch,
             bracket=tuple(float(end) for end in solution.bracket or ()),
             other_roots=tuple(_root(root) for root in solution.other_roots),
@@ -125,6 +126,7 @@ class StepRecords:
             double_error=0.0,
             residual=0.0,
             limits=(),
+            limit_operands=(),
             branch="",
             bracket=(),
             other_roots=(),
@@ -176,9 +178,19 @@ class StepRecords:
     def _values(
         self, source: Instance | RegimeInstance, symbols: Iterable[Symbol]
     ) -> dict[Symbol, Ball]:
-        bound = {symbol: source.place.variable(symbol) for symbol in symbols}
+        bound = source.place.variables(symbols)
         values = self.outcome.values
-        return {symbol: values[v] for symbol, v in bound.items() if v in values}
+        return {symbol: values[v] for symbol, v in bound.items() if v in self.where}
+
+    def _limit_operands(self, source: Instance) -> tuple[Operand, ...]:
+        """What the limits name, the relation does not, and the sheet nevertheless holds."""
+        named = (s for limit in source.relation.limits for s in limit.condition.symbols)
+        further = [
+            symbol
+            for symbol in dict.fromkeys(named)
+            if symbol not in source.relation.symbols and source.place.variable(symbol) in self.where
+        ]
+        return self._operands(source, further, None)
 
     def _limits(self, source: Instance) -> Iterator[LimitRecord]:
         for limit in source.relation.limits:

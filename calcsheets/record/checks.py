@@ -2,12 +2,22 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterator
 
 from ..errors import ContradictoryInputs, SolvingError
 from ..planning import Instance
 from ..quantities import Variable, catalogue
-from ..solving import Ball, Outcome, Question, evaluate, midpoint, solve
+from ..solving import (
+    Ball,
+    Outcome,
+    OutsideDomainError,
+    Question,
+    compare,
+    evaluate,
+    midpoint,
+    solve,
+)
 from .model import ConsistencyRecord
 
 LARGEST_DIFFERENCE = 0.005
@@ -30,12 +40,10 @@ def consistency_checks(outcome: Outcome) -> Iterator[ConsistencyRecord]:
             instance.key in used
             or not all(variable in outcome.values for variable in variables)
             or (regime is not None and outcome.regimes.get(regime) != instance.relation.regime)
+            or not _applies(outcome, instance)
         ):
             continue
-        values = {symbol: outcome.values[v] for symbol, v in instance.binding.items()}
-        left = evaluate(instance.relation.published.left, values)
-        right = evaluate(instance.relation.published.right, values)
-        difference = _relative(left, right)
+        difference = _difference(outcome, instance)
         if abs(difference) > LARGEST_DIFFERENCE:
             raise _contradiction(outcome, instance, variables, difference)
         yield ConsistencyRecord(
@@ -44,6 +52,27 @@ def consistency_checks(outcome: Outcome) -> Iterator[ConsistencyRecord]:
             keys=tuple(str(variable) for variable in variables),
             difference=difference,
         )
+
+
+def _applies(outcome: Outcome, instance: Instance) -> bool:
+    """Whether no limit outside which the relation means nothing is known to be missed."""
+    for limit in instance.relation.limits:
+        bound = instance.place.variables(limit.condition.symbols)
+        values = {s: outcome.values[v] for s, v in bound.items() if v in outcome.values}
+        evaluable = len(values) == len(bound)
+        if limit.essential and evaluable and compare(limit.condition, values) is False:
+            return False
+    return True
+
+
+def _difference(outcome: Outcome, instance: Instance) -> float:
+    """Relative difference of the sides; infinite where a side has no value."""
+    values = {symbol: outcome.values[v] for symbol, v in instance.binding.items()}
+    published = instance.relation.published
+    try:
+        return _relative(evaluate(published.left, values), evaluate(published.right, values))
+    except OutsideDomainError:
+        return math.inf
 
 
 def _relative(left: Ball, right: Ball) -> float:

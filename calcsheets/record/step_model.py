@@ -150,6 +150,7 @@ class StepRecord:
             a workbook does.
         residual: bound on the relative difference of both sides of the published form.
         limits: limits of the relation.
+        limit_operands: known quantities that only the limits name.
         branch: branch on which the value lies, empty for none.
         bracket: interval in which the root is the only one, empty for closed forms.
         other_roots: roots not taken.
@@ -178,6 +179,7 @@ class StepRecord:
     double_error: float
     residual: float
     limits: tuple[LimitRecord, ...]
+    limit_operands: tuple[Operand, ...]
     branch: str
     bracket: tuple[float, ...]
     other_roots: tuple[RootRecord, ...]

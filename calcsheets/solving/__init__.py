@@ -3,6 +3,7 @@
 from .balls import (
     PRECISION,
     Ball,
+    OutsideDomainError,
     decimal_bounds,
     evaluate,
     exact_ball,
@@ -33,6 +34,7 @@ __all__ = [
     "Move",
     "OtherRoot",
     "Outcome",
+    "OutsideDomainError",
     "Question",
     "RegimeOutcome",
     "Solution",

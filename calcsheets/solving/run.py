@@ -6,7 +6,7 @@ from collections.abc import Iterator, Mapping
 from dataclasses import dataclass, field
 from itertools import product
 
-from ..errors import AmbiguousRegime, NotEnoughInputs, SolvingError
+from ..errors import AmbiguousRegime, NotEnoughInputs, OutsideLimit, SolvingError
 from ..expressions import Condition
 from ..planning import (
     Edge,
@@ -18,6 +18,7 @@ from ..planning import (
     reach,
 )
 from ..quantities import Variable, catalogue
+from ..relations import Limit
 from .balls import Ball, OutsideDomainError, evaluate, exact_ball, working_precision
 from .solve import Question, Solution, compare, solve
 
@@ -176,8 +177,10 @@ class _Run:
         """Solve everything that the wanted results need."""
         wanted = [item.variable for item in self.problem.brief.wanted]
         tests = [variable for variable in self.assumed if variable in reached.edges]
-        edges = reached.needed([*wanted, *tests])
+        targets = [*wanted, *tests]
+        edges = reached.needed(targets)
         self.execute(edges)
+        edges = self._with_limits(reached, targets, edges)
         return Outcome(
             self.problem,
             tuple(self.solved[edge.target] for edge in edges),
@@ -185,6 +188,46 @@ class _Run:
             dict(self.regimes),
             reached,
         )
+
+    def _with_limits(
+        self, reached: Reach, targets: list[Variable], edges: tuple[Edge, ...]
+    ) -> tuple[Edge, ...]:
+        """Solve also for what the essential limits of the steps ask for, and test them.
+
+        Raises:
+            OutsideLimit: if an essential limit is not met.
+        """
+        extra = [
+            variable
+            for edge in edges
+            for limit in _essential_limits(edge)
+            for variable in edge.source.place.variables(limit.condition.symbols).values()
+            if variable not in self.values and variable in reached
+        ]
+        for variable in dict.fromkeys(extra):
+            try:
+                self.execute(reached.needed([variable]))
+            except SolvingError:
+                continue  # the sheet says that the limit could not be evaluated
+            targets = [*targets, variable]
+        for edge in edges:
+            for limit in _essential_limits(edge):
+                self._require(edge, limit)
+        return reached.needed(targets)
+
+    def _require(self, edge: Edge, limit: Limit) -> None:
+        bound = edge.source.place.variables(limit.condition.symbols)
+        values = {s: self.values[v] for s, v in bound.items() if v in self.values}
+        if len(values) < len(bound) or not isinstance(edge.source, Instance):
+            return
+        if compare(limit.condition, values) is False:
+            raise OutsideLimit(edge.source.relation.title, str(edge.target), limit.reason)
+
+
+def _essential_limits(edge: Edge) -> tuple[Limit, ...]:
+    if not isinstance(edge.source, Instance):
+        return ()
+    return tuple(limit for limit in edge.source.relation.limits if limit.essential)
 
 
 def solve_problem(problem: Problem) -> Outcome:

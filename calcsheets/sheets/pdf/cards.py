@@ -233,7 +233,7 @@ def coherent_unit(dimension: Dimension) -> str:
 
 
 def _operands(step: StepRecord) -> Iterator[Where]:
-    for operand in step.operands:
+    for operand in (*step.operands, *step.limit_operands):
         kind = "input" if operand.input else "step"
         yield Where(
             symbol_html(operand.symbol),

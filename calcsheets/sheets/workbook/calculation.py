@@ -116,7 +116,10 @@ def _value_formula(step: StepRecord, cells: Cells, roots: Mapping[int, str]) -> 
 
 
 def _write_limits(page: Page, row: int, step: StepRecord, cells: Cells) -> None:
-    known = {**cells.of(step.operands), step.symbol: cells.by_key[step.key]}
+    known = {
+        **cells.of((*step.operands, *step.limit_operands)),
+        step.symbol: cells.by_key[step.key],
+    }
     conditions = [
         comparison(limit.condition, known) for limit in step.limits if _evaluable(limit, known)
     ]
