@@ -11,6 +11,7 @@ from .tree import (
     Equation,
     Expr,
     Function,
+    Integral,
     Negative,
     Number,
     Power,
@@ -23,7 +24,7 @@ from .tree import (
 
 
 def to_sympy(expr: Expr) -> Any:
-    """Return the expression as a sympy object, evaluated as sympy does.
+    """Return the expression as a sympy object, evaluated as sympy does; integrals are not.
 
     Symbols carry the sign that the bounds of their quantity prove; constants other than π
     stay symbols, so that an equation keeps its form.
@@ -54,6 +55,9 @@ def to_sympy(expr: Expr) -> Any:
             return sympy.sqrt(to_sympy(radicand))
         case Function(name, argument):
             return _functions()[name](to_sympy(argument))
+        case Integral(integrand, variable, low, high):
+            limits = (to_sympy(variable), to_sympy(low), to_sympy(high))
+            return sympy.Integral(to_sympy(integrand), limits)
     raise DefinitionError(f"expression {expr!r}", "it is no node of an expression tree")
 
 

@@ -18,6 +18,7 @@ from .tree import (
     Equation,
     Expr,
     Function,
+    Integral,
     Negative,
     Number,
     Power,
@@ -99,6 +100,8 @@ def _element(expr: Expr) -> ET.Element:
             return _apply("arith1", "root", radicand, Number(Fraction(2)))
         case Function(name, argument):
             return _apply("transc1", name, argument)
+        case Integral():
+            return _integral(expr)
     raise DefinitionError(f"expression {expr!r}", "it is no node of an expression tree")
 
 
@@ -106,6 +109,19 @@ def _apply(dictionary: str, name: str, *operands: Expr) -> ET.Element:
     element = ET.Element("apply")
     element.append(_leaf("csymbol", name, cd=dictionary))
     element.extend(_element(operand) for operand in operands)
+    return element
+
+
+def _integral(integral: Integral) -> ET.Element:
+    """Strict form of ``int`` with ``bvar``, ``lowlimit`` and ``uplimit``."""
+    function = ET.Element("bind")
+    function.append(_leaf("csymbol", "lambda", cd="fns1"))
+    ET.SubElement(function, "bvar").append(_element(integral.variable))
+    function.append(_element(integral.integrand))
+    element = ET.Element("apply")
+    element.append(_leaf("csymbol", "defint", cd="calculus1"))
+    element.append(_apply("interval1", "oriented_interval", integral.low, integral.high))
+    element.append(function)
     return element
 
 
@@ -148,6 +164,8 @@ def _expr(element: ET.Element, depth: int) -> Expr:
 def _applied(element: ET.Element, depth: int) -> Expr:
     head, *rest = element
     name = head.text or ""
+    if (head.get("cd"), name) == ("calculus1", "defint"):
+        return _read_integral(rest, depth)
     operands = tuple(_expr(child, depth + 1) for child in rest)
     match head.get("cd"), name, operands:
         case "arith1", "plus", (_, _, *_):
@@ -167,6 +185,26 @@ def _applied(element: ET.Element, depth: int) -> Expr:
         case "transc1", _, (argument,) if name in FUNCTIONS:
             return Function(name, argument)
     raise DefinitionError("MathML", f'operator "{name}" with {len(operands)} operands')
+
+
+def _read_integral(parts: list[ET.Element], depth: int) -> Expr:
+    match [_shape(part) for part in parts]:
+        case [
+            ("apply", "interval1", "oriented_interval", 3),
+            ("bind", "fns1", "lambda", 3),
+        ] if parts[1][1].tag == "bvar" and len(parts[1][1]) == 1:
+            (_, low, high), (_, bound, body) = parts
+            variable = _expr(bound[0], depth + 1)
+            if isinstance(variable, Symbol):
+                limits = (_expr(low, depth + 1), _expr(high, depth + 1))
+                return Integral(_expr(body, depth + 1), variable, *limits)
+    raise DefinitionError("MathML", "an integral needs two limits and a function of one variable")
+
+
+def _shape(element: ET.Element) -> tuple[str, str, str, int]:
+    """Tag, dictionary and name of the head, and number of parts."""
+    head = element[0] if len(element) else element
+    return element.tag, head.get("cd", ""), head.text or "", len(element)
 
 
 def _fraction(text: str) -> Fraction:

@@ -7,6 +7,7 @@ from fractions import Fraction
 from .tree import (
     Expr,
     Function,
+    Integral,
     Negative,
     Number,
     Power,
@@ -15,6 +16,7 @@ from .tree import (
     Root,
     Sum,
     Symbol,
+    substitute,
     symbols_in,
 )
 
@@ -45,6 +47,8 @@ def derivative(expr: Expr, variable: Symbol) -> Expr:
             return _power_rule(expr, base, exponent, variable)
         case Function(name, argument):
             return derivative(argument, variable) * _outer(name, argument)
+        case Integral():
+            return _leibniz(expr, variable)
         case _:
             return _ONE
 
@@ -71,6 +75,21 @@ def _power_rule(power: Expr, base: Expr, exponent: Expr, variable: Symbol) -> Ex
         terms.append(exponent * base ** (exponent - 1) * in_base)
     if in_exponent != _ZERO:
         terms.append(power * Function("ln", base) * in_exponent)
+    return _sum(tuple(terms))
+
+
+def _leibniz(integral: Integral, variable: Symbol) -> Expr:
+    """The limits move, and the integrand changes between them."""
+    terms: list[Expr] = []
+    at_high = substitute(integral.integrand, {integral.variable: integral.high})
+    at_low = substitute(integral.integrand, {integral.variable: integral.low})
+    for end, limit in ((at_high, integral.high), (Negative(at_low), integral.low)):
+        rate = derivative(limit, variable)
+        if rate != _ZERO:
+            terms.append(end * rate)
+    inside = derivative(integral.integrand, variable)
+    if inside != _ZERO:
+        terms.append(Integral(inside, integral.variable, integral.low, integral.high))
     return _sum(tuple(terms))
 
 

@@ -12,6 +12,7 @@ from .tree import (
     Constant,
     Expr,
     Function,
+    Integral,
     Negative,
     Number,
     Power,
@@ -55,6 +56,8 @@ def dimension_of(expr: Expr) -> Dimension:
         case Function(name, argument):
             _require_number(argument, f"the argument of {name}")
             return ONE
+        case Integral(integrand, variable, low, high):
+            return dimension_of(integrand) * _of_limits(variable, low, high)
     raise DefinitionError(f"expression {expr!r}", "it is no node of an expression tree")
 
 
@@ -64,6 +67,14 @@ def _common(terms: tuple[Expr, ...]) -> Dimension:
         if other != first:
             raise DefinitionError("a sum", f"{first} and {other} cannot be added")
     return first
+
+
+def _of_limits(variable: Symbol, low: Expr, high: Expr) -> Dimension:
+    dimension = dimension_of(variable)
+    for limit in (dimension_of(low), dimension_of(high)):
+        if limit != dimension:
+            raise DefinitionError("an integral", f"over {dimension} it has a limit in {limit}")
+    return dimension
 
 
 def _power(base: Expr, exponent: Expr) -> Dimension:

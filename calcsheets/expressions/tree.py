@@ -176,6 +176,30 @@ class Function(Expr):
             raise DefinitionError(f"function {self.name}", "it is not one of those known")
 
 
+@dataclass(frozen=True)
+class Integral(Expr):
+    """A definite integral.
+
+    Attributes:
+        integrand: what is integrated.
+        variable: the symbol that runs; outside the integrand it has no meaning.
+        low: where it starts.
+        high: where it ends.
+    """
+
+    integrand: Expr
+    variable: Symbol
+    low: Expr
+    high: Expr
+
+    def __post_init__(self) -> None:
+        name = f"integral over {self.variable}"
+        if any(isinstance(node, Integral) for node in _nodes(self.integrand)):
+            raise DefinitionError(name, "its integrand holds another integral")
+        if self.variable in {*symbols_in(self.low), *symbols_in(self.high)}:
+            raise DefinitionError(name, "its limits hold its own variable")
+
+
 FUNCTIONS = ("exp", "ln", "sin", "cos", "tan", "arcsin", "arccos", "arctan")
 
 
@@ -334,45 +358,71 @@ def children(expr: Expr) -> tuple[Expr, ...]:
             return (base, exponent)
         case Negative(operand) | Root(operand) | Function(_, operand):
             return (operand,)
+        case Integral(integrand, _, low, high):
+            return (low, high, integrand)
         case _:
             return ()
 
 
 def symbols_in(expr: Expr) -> Iterator[Symbol]:
-    """Yield every occurrence of a symbol, in order."""
+    """Yield every occurrence of a symbol, in order; the variable of an integral is none."""
     if isinstance(expr, Symbol):
         yield expr
     for child in children(expr):
-        yield from symbols_in(child)
+        for symbol in symbols_in(child):
+            if not (isinstance(expr, Integral) and symbol == expr.variable):
+                yield symbol
+
+
+def integrals_in(expr: Expr) -> Iterator[Integral]:
+    """Yield every integral, in order."""
+    return (node for node in _nodes(expr) if isinstance(node, Integral))
 
 
 def constants_in(expr: Expr) -> Iterator[Constant]:
     """Yield every occurrence of a constant, in order."""
-    if isinstance(expr, Constant):
-        yield expr
-    for child in children(expr):
-        yield from constants_in(child)
+    return (node for node in _nodes(expr) if isinstance(node, Constant))
 
 
 def substitute(expr: Expr, values: Mapping[Symbol, Expr]) -> Expr:
-    """Return the expression with symbols replaced."""
+    """Return the expression with symbols replaced; the variable of an integral is not."""
     match expr:
         case Symbol():
             return values.get(expr, expr)
-        case Sum(terms):
-            return Sum(tuple(substitute(term, values) for term in terms))
-        case Product(factors):
-            return Product(tuple(substitute(factor, values) for factor in factors))
-        case Quotient(numerator, denominator):
-            return Quotient(substitute(numerator, values), substitute(denominator, values))
-        case Power(base, exponent):
-            return Power(substitute(base, values), substitute(exponent, values))
-        case Negative(operand):
-            return Negative(substitute(operand, values))
-        case Root(radicand):
-            return Root(substitute(radicand, values))
-        case Function(name, argument):
-            return Function(name, substitute(argument, values))
+        case Integral(_, variable, _, _) if variable in values:
+            free = {symbol: value for symbol, value in values.items() if symbol != variable}
+            return substitute(expr, free)
+        case _:
+            return _rebuilt(expr, tuple(substitute(child, values) for child in children(expr)))
+
+
+def replace_integrals(expr: Expr, values: Mapping[Integral, Expr]) -> Expr:
+    """Return the expression with some of its integrals replaced."""
+    if isinstance(expr, Integral) and expr in values:
+        return values[expr]
+    return _rebuilt(expr, tuple(replace_integrals(child, values) for child in children(expr)))
+
+
+def _rebuilt(expr: Expr, parts: tuple[Expr, ...]) -> Expr:
+    """Return the same node over other operands, in the order of ``children``."""
+    match expr:
+        case Sum():
+            return Sum(parts)
+        case Product():
+            return Product(parts)
+        case Quotient():
+            return Quotient(*parts)
+        case Power():
+            return Power(*parts)
+        case Negative():
+            return Negative(*parts)
+        case Root():
+            return Root(*parts)
+        case Function(name, _):
+            return Function(name, *parts)
+        case Integral(_, variable, _, _):
+            low, high, integrand = parts
+            return Integral(integrand, variable, low, high)
         case _:
             return expr
 
@@ -393,6 +443,12 @@ def decimal_text(value: Fraction) -> str:
     whole, decimals = (text[:-digits], text[-digits:].rstrip("0")) if digits else (text, "")
     sign = "-" if value < 0 else ""
     return f"{sign}{whole}.{decimals}" if decimals else f"{sign}{whole}"
+
+
+def _nodes(expr: Expr) -> Iterator[Expr]:
+    yield expr
+    for child in children(expr):
+        yield from _nodes(child)
 
 
 def _terms(expr: Expr) -> tuple[Expr, ...]:

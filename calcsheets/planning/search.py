@@ -14,7 +14,7 @@ from collections.abc import Iterable, Iterator, Mapping
 from dataclasses import dataclass
 from functools import lru_cache
 
-from ..expressions import Equation, Symbol, symbols_in
+from ..expressions import Equation, Symbol, integrals_in, symbols_in
 from ..quantities import Variable
 from .problem import Instance, Problem, RegimeInstance
 
@@ -192,6 +192,8 @@ def _relation_edges(instance: Instance, before: tuple[Variable, ...]) -> Iterato
 
 @lru_cache(maxsize=4096)
 def _closes(equation: Equation, unknown: Symbol) -> bool:
-    """Whether the unknown occurs once, so that moves isolate it."""
-    found = [*symbols_in(equation.left), *symbols_in(equation.right)]
-    return found.count(unknown) == 1
+    """Whether the unknown occurs once and in no integral, so that moves isolate it."""
+    sides = (equation.left, equation.right)
+    if any(unknown in set(symbols_in(i)) for side in sides for i in integrals_in(side)):
+        return False
+    return [symbol for side in sides for symbol in symbols_in(side)].count(unknown) == 1

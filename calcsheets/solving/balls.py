@@ -15,6 +15,7 @@ from ..expressions import (
     Constant,
     Expr,
     Function,
+    Integral,
     Negative,
     Number,
     Power,
@@ -24,6 +25,8 @@ from ..expressions import (
     Sum,
     Symbol,
 )
+from .complex_balls import complex_function
+from .integration import integral_ball
 
 Ball = Any  # flint.arb has no type information
 PRECISION = 192
@@ -96,6 +99,8 @@ def evaluate(expr: Expr, values: Mapping[Symbol, Ball]) -> Ball:
             return _root(evaluate(radicand, values))
         case Function(name, argument):
             return _FUNCTIONS[name](evaluate(argument, values))
+        case Integral():
+            return _integral(expr, values)
     raise DefinitionError(f"expression {expr!r}", "it is no node of an expression tree")
 
 
@@ -123,6 +128,17 @@ def _power(base: Ball, exponent: Expr, values: Mapping[Symbol, Ball]) -> Ball:
         largest = arb(base.upper())
         return arb(0).union(largest**power if largest > 1 else arb(1).union(largest**power))
     return base**power
+
+
+def _integral(integral: Integral, values: Mapping[Symbol, Ball]) -> Ball:
+    variable, integrand = integral.variable, integral.integrand
+    value = integral_ball(
+        complex_function(integrand, variable, lambda part: evaluate(part, values)),
+        lambda at: evaluate(integrand, {**values, variable: at}),
+        evaluate(integral.low, values),
+        evaluate(integral.high, values),
+    )
+    return _inside(value, value is not None)
 
 
 def midpoint(ball: Ball) -> float:

@@ -26,6 +26,7 @@ from ..expressions import (
     Root,
     Sum,
     Symbol,
+    integrals_in,
     symbols_in,
     to_sympy,
 )
@@ -58,10 +59,12 @@ def polynomial_form(equation: Equation, unknown: Symbol) -> PolynomialForm | Non
 
     Returns:
         The form, or ``None`` if the unknown stands in an exponent, in a power that does not
-        close, or in a polynomial of a degree above two.
+        close, in an integral, or in a polynomial of a degree above two.
     """
     import sympy
 
+    if any(integrals_in(equation.left)) or any(integrals_in(equation.right)):
+        return None
     squared, moves = _without_root(equation, unknown)
     difference = to_sympy(squared.left) - to_sympy(squared.right)
     form = _form(difference, unknown, _symbol_table(squared), moves)

@@ -15,6 +15,7 @@ from calcsheets.expressions import (
     Constant,
     Expr,
     Function,
+    Integral,
     Number,
     Power,
     Product,
@@ -167,6 +168,12 @@ class TestText:
     def test_a_symbol_without_a_cell_is_named(self):
         with pytest.raises(DefinitionError, match="symbol T: no cell holds its value"):
             formula(a + b, {a: "A1"})
+
+    def test_an_integral_stands_in_a_cell_of_its_own(self):
+        integral = Integral(c**2, c, a, b)
+        assert formula(2 * integral, CELLS, integrals={integral: "Z9"}) == "(2*Z9)"
+        with pytest.raises(DefinitionError, match="integral over rho: no cell holds its value"):
+            formula(2 * integral, CELLS)
 
 
 _INVERSE = {"arcsin": "sin", "arccos": "cos", "arctan": "tan", "tan": "arctan"}

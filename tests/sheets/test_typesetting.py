@@ -19,6 +19,7 @@ from calcsheets.expressions import (
     Equation,
     Expr,
     Function,
+    Integral,
     Negative,
     Number,
     Power,
@@ -230,6 +231,48 @@ class TestBrackets:
     )
     def test_brackets_stand_where_they_are_needed_and_nowhere_else(self, expr, text):
         assert plain_text(expr) == text
+
+
+class TestIntegrals:
+    integral = Integral(1 + c / a, c, Root(a), b**2)
+    single = Integral(c**2, c, a, b)
+
+    @pytest.mark.parametrize(
+        ("expr", "text"),
+        [
+            (single, "∫[p to T] ρ² dρ"),
+            (integral, "∫[√p to T²] (1 + ρ/p) dρ"),
+            (2 * single, "2·∫[p to T] ρ² dρ"),
+            (Product((single, a)), "(∫[p to T] ρ² dρ)·p"),
+            (Quotient(a, single), "p/(∫[p to T] ρ² dρ)"),
+            (Power(single, b), "(∫[p to T] ρ² dρ)^T"),
+            (Integral(1 / c, c, a, b), "∫[p to T] (1/ρ) dρ"),
+        ],
+    )
+    def test_an_integral_is_one_factor_in_a_line(self, expr, text):
+        assert plain_text(expr) == text
+
+    def test_an_integral_is_set_with_its_limits_below_and_above_the_sign(self):
+        root = ET.fromstring(presentation_mathml(self.integral))
+        (over,) = root.iter("{http://www.w3.org/1998/Math/MathML}munderover")
+        assert ["".join(part.itertext()) for part in over] == ["∫", "p", "T2"]
+        assert words(presentation_mathml(self.integral)) == "∫pT2(1+ρp)dρ"
+
+    def test_the_latex_of_an_integral_is_understood_by_a_typesetter(self):
+        text = latex_text(self.single)
+        assert text == r"\int_{p}^{T} \rho^{2} \, \mathrm{d} \rho"
+        assert ziamath.Latex(text).getsize()[0] > 10
+
+    def test_a_substitution_leaves_the_variable_a_letter(self):
+        shown = substituted_mathml(self.integral, {a: ("2", "1"), b: ("3", "1")})
+        assert words(shown) == "∫232(1+ρ2)dρ"
+
+    def test_an_integral_is_drawn_with_paths_alone(self):
+        drawing = draw(presentation_mathml(self.integral))
+        assert drawing.height > 20
+        assert {element.tag.split("}")[1] for element in ET.fromstring(drawing.svg).iter()} == {
+            "svg", "path",
+        }  # fmt: skip
 
 
 def trees() -> st.SearchStrategy[Expr]:

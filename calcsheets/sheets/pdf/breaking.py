@@ -98,6 +98,8 @@ def _least_width(element: ET.Element) -> float:
             return max(widths) * _FRACTION
         case "msup" | "msub" | "msubsup" | "mover":
             return widths[0]
+        case "munderover":
+            return max(widths)
     return sum(widths)
 
 

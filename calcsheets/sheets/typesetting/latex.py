@@ -12,6 +12,7 @@ from .layout import (
     Bracketed,
     Called,
     Digits,
+    Integrated,
     Manner,
     Raised,
     RootOf,
@@ -59,6 +60,9 @@ def _text(box: Box) -> str:
             return rf"\{name}\left({_text(argument)}\right)"
         case Bracketed(inside):
             return rf"\left({_text(inside)}\right)"
+        case Integrated(low, high, integrand, variable):
+            limits = rf"\int_{{{_text(low)}}}^{{{_text(high)}}}"
+            return rf"{limits} {_text(integrand)} \, \mathrm{{d}} {_text(variable)}"
 
 
 def _sign(text: str, prefix: bool) -> str:

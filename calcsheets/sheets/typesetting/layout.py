@@ -18,6 +18,7 @@ from ...expressions import (
     Equation,
     Expr,
     Function,
+    Integral,
     Negative,
     Number,
     Power,
@@ -93,7 +94,17 @@ class Bracketed:
     inside: Box
 
 
-Box = Letter | Digits | Sign | Row | Stacked | Raised | RootOf | Called | Bracketed
+@dataclass(frozen=True)
+class Integrated:
+    """An integral sign with its limits, the integrand and its variable behind a ``d``."""
+
+    low: Box
+    high: Box
+    integrand: Box
+    variable: Box
+
+
+Box = Letter | Digits | Sign | Row | Stacked | Raised | RootOf | Called | Bracketed | Integrated
 
 
 class Strength(IntEnum):
@@ -184,7 +195,22 @@ def _unsigned(expr: Expr, manner: Manner) -> Piece:
             return Piece(RootOf(piece(radicand, manner).box), Strength.POWER)
         case Function(name, argument):
             return Piece(Called(name, piece(argument, manner).box), Strength.POWER)
+        case Integral():
+            return _integral(expr, manner)
     raise DefinitionError(f"expression {expr!r}", "it is no node of an expression tree")
+
+
+def _integral(integral: Integral, manner: Manner) -> Piece:
+    """The variable stays a letter where every other symbol becomes its number."""
+
+    def leaf(symbol: Symbol | Constant) -> Piece:
+        return symbol_piece(symbol) if symbol == integral.variable else manner.leaf(symbol)
+
+    inside = piece(integral.integrand, replace(manner, leaf=leaf)).at_least(Strength.PRODUCT)
+    in_line = replace(manner, linear=True)
+    low, high = (piece(limit, in_line).box for limit in (integral.low, integral.high))
+    box = Integrated(low, high, inside, symbol_piece(integral.variable).box)
+    return Piece(box, Strength.QUOTIENT)  # what follows must not be read into it
 
 
 def _terms(expr: Expr, manner: Manner) -> Iterator[tuple[bool, Expr]]:

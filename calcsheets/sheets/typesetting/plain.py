@@ -11,6 +11,7 @@ from .layout import (
     Bracketed,
     Called,
     Digits,
+    Integrated,
     Manner,
     Raised,
     RootOf,
@@ -59,6 +60,9 @@ def _text(box: Box) -> str:
             return f"({_text(inside)})"
         case Stacked(above, below):
             return f"({_text(above)})/({_text(below)})"
+        case Integrated(low, high, integrand, variable):
+            limits = f"{_text(low)} to {_text(high)}"
+            return f"∫[{limits}] {_text(integrand)} d{_text(variable)}"
 
 
 def _exponent(box: Box) -> str:

@@ -13,6 +13,7 @@ from .layout import (
     Bracketed,
     Called,
     Digits,
+    Integrated,
     Manner,
     Piece,
     Raised,
@@ -116,6 +117,8 @@ def _markup(box: Box) -> str:
             return _row(_inside(Called(name, argument)))
         case Bracketed(inside):
             return _brackets(inside)
+        case Integrated():
+            return _row(_integral(box))
 
 
 def _inside(box: Box) -> str:
@@ -130,6 +133,14 @@ def _inside(box: Box) -> str:
             return f'<mi mathvariant="normal">{name}</mi>{_brackets(argument)}'
         case _:
             return _markup(box)
+
+
+def _integral(box: Integrated) -> str:
+    sign = '<mo largeop="true" lspace="0" rspace="0.1em">∫</mo>'
+    limits = f"{_row(_inside(box.low))}{_row(_inside(box.high))}"
+    running = f'<mi mathvariant="normal">d</mi>{_markup(box.variable)}'
+    space = '<mspace width="0.167em"/>'
+    return f"<munderover>{sign}{limits}</munderover>{_inside(box.integrand)}{space}{running}"
 
 
 def _row(inside: str) -> str:

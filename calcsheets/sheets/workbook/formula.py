@@ -19,6 +19,7 @@ from ...expressions import (
     Constant,
     Expr,
     Function,
+    Integral,
     Negative,
     Number,
     Power,
@@ -43,10 +44,14 @@ _FUNCTIONS: Mapping[str, str] = MappingProxyType(
 )
 _EXACT_BELOW = 10**15  # whole numbers up to here are kept by every engine
 _NO_CELLS: Mapping[str, str] = MappingProxyType({})
+_NO_INTEGRALS: Mapping[Integral, str] = MappingProxyType({})
 
 
 def formula(
-    expr: Expr, cells: Mapping[Symbol, str], constants: Mapping[str, str] = _NO_CELLS
+    expr: Expr,
+    cells: Mapping[Symbol, str],
+    constants: Mapping[str, str] = _NO_CELLS,
+    integrals: Mapping[Integral, str] = _NO_INTEGRALS,
 ) -> str:
     """Return an expression as formula text, without the leading equals sign.
 
@@ -54,9 +59,10 @@ def formula(
         expr: the expression.
         cells: cell reference or defined name of each of its symbols, in coherent SI.
         constants: cell or name of constants by name; the others are written as numbers.
+        integrals: cell of each of its integrals, which a formula cannot hold.
 
     Raises:
-        DefinitionError: if a symbol has no cell.
+        DefinitionError: if a symbol or an integral has no cell.
     """
 
     def text(node: Expr) -> str:
@@ -81,6 +87,10 @@ def formula(
                 return f"SQRT({text(radicand)})"
             case Function(name, argument):
                 return f"{_FUNCTIONS[name]}({text(argument)})"
+            case Integral(_, variable, _, _):
+                if node not in integrals:
+                    raise DefinitionError(f"integral over {variable}", "no cell holds its value")
+                return integrals[node]
         raise DefinitionError(f"expression {node!r}", "it is no node of an expression tree")
 
     def added(term: Expr) -> str:
