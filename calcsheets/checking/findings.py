@@ -81,9 +81,29 @@ def _check_step(record: Record, step: StepRecord) -> Iterator[Finding]:
         return
     values[step.symbol] = mpmath.mpf(step.value)
     yield _check_equation(part, step.key, published, values)
+    yield from _check_members(record, part, step, values)
     values |= {operand.symbol: mpmath.mpf(operand.value) for operand in step.limit_operands}
     for limit in step.limits:
         yield _check_limit(part, step, limit, values)
+
+
+def _check_members(
+    record: Record, part: str, step: StepRecord, values: Mapping[Symbol, Any]
+) -> Iterator[Finding]:
+    """Each relation of a coupled set, with the values that the whole set came to."""
+    import mpmath
+
+    inside = dict(values)
+    for member in step.combination:
+        value = _value_of(record, member.key) if member.key else None
+        if member.symbol is not None and value is not None:
+            inside[member.symbol] = mpmath.mpf(value)
+    for member in step.combination:
+        if not set(member.published.symbols) <= set(inside):
+            reason = f"{member.relation} needs a value that the record does not hold"
+            yield Finding(part, step.key, "failed", reason)
+            continue
+        yield _check_equation(part, step.key, member.published, inside)
 
 
 def _check_limit(

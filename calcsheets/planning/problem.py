@@ -7,9 +7,16 @@ from dataclasses import dataclass
 from functools import cached_property
 
 from ..brief import Brief, Leg, SameAs, Station
-from ..expressions import Symbol
+from ..expressions import Condition, Equation, Expr, Symbol
 from ..quantities import Variable
-from ..relations import Library, Regime, Relation, Source, mixture_relations
+from ..relations import (
+    Library,
+    Regime,
+    Relation,
+    Source,
+    mixture_relations,
+    starting_from,
+)
 from ..relations.roles import DISCHARGE, INLET, OUTLET, SUPPLY, THROUGH
 
 
@@ -49,11 +56,15 @@ class Instance:
         relation: the relation.
         place: where it is offered.
         rank: position of the relation in the library; of two equal ways the first is taken.
+        members: the relations that it combines, where it is a coupled set.
+        conditions: what a solution of a coupled set must meet besides.
     """
 
     relation: Relation
     place: Place
     rank: int
+    members: tuple[Member, ...] = ()
+    conditions: tuple[Condition, ...] = ()
 
     @cached_property
     def binding(self) -> Mapping[Symbol, Variable]:
@@ -71,6 +82,34 @@ class Instance:
         if not self.relation.regime:
             return None
         return Variable("regime", self.place.roles[self.relation.regime_role])
+
+    @property
+    def regimes(self) -> tuple[tuple[Variable, str], ...]:
+        """Every regime on which it depends, with the outcome in which it holds."""
+        variable = self.regime_variable
+        own = () if variable is None else ((variable, self.relation.regime),)
+        of_members = (use for member in self.members for use in member.instance.regimes)
+        return tuple(dict.fromkeys((*own, *of_members)))
+
+
+@dataclass(frozen=True)
+class Member:
+    """One relation of a coupled set.
+
+    Attributes:
+        instance: the relation at its place.
+        gives: the variable that it gives once the torn one is known; ``None`` for the relation
+            that closes the loop.
+        symbol: that variable in the symbols of the set; ``None`` likewise.
+        published: the relation in the symbols of the set.
+        solved: its solved form in these symbols; ``None`` for the closing relation.
+    """
+
+    instance: Instance
+    gives: Variable | None
+    symbol: Symbol | None
+    published: Equation
+    solved: Expr | None
 
 
 @dataclass(frozen=True)
@@ -170,8 +209,11 @@ def _places(brief: Brief) -> Iterator[tuple[Place, str]]:
     for station in brief.stations:
         yield _station_place(station), station.kind
     legs = {leg.name: leg for leg in brief.legs}
+    kinds = {station.name: station.kind for station in brief.stations}
     for leg in brief.legs:
-        yield _leg_place(leg, legs), leg.process
+        place = _leg_place(leg, legs)
+        yield place, leg.process
+        yield place, starting_from(leg.process, kinds[leg.start])
 
 
 def _gas_place(brief: Brief) -> Place:

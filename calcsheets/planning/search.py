@@ -81,6 +81,7 @@ def reach(
     assumed: frozenset[Variable] = frozenset(),
     extra: Iterable[Variable] = (),
     open_regimes: bool = False,
+    further: Iterable[Edge] = (),
 ) -> Reach:
     """Return everything that follows, by the cheapest derivations.
 
@@ -91,9 +92,10 @@ def reach(
         extra: variables to take as known besides the given ones.
         open_regimes: whether relations of undecided regimes are offered too, once the regime
             can be decided: for what could be reached, not for what is.
+        further: edges besides those of the relations, such as coupled sets.
     """
     known = problem.known | frozenset(extra)
-    edges = tuple(_edges(problem, regimes, assumed, open_regimes))
+    edges = (*offered_edges(problem, regimes, assumed, open_regimes), *further)
     waiting = [len(set(edge.inputs) - known) for edge in edges]
     users: defaultdict[Variable, list[int]] = defaultdict(list)
     for index, edge in enumerate(edges):
@@ -161,12 +163,13 @@ class _Derivations:
         return union
 
 
-def _edges(
+def offered_edges(
     problem: Problem,
     regimes: Mapping[Variable, str],
     assumed: frozenset[Variable],
-    open_regimes: bool,
+    open_regimes: bool = False,
 ) -> Iterator[Edge]:
+    """Yield every way from a relation or regime test to one of its variables; see :func:`reach`."""
     for instance in problem.instances:
         condition, regime = instance.regime_variable, instance.relation.regime
         undecided = regime if open_regimes else None

@@ -162,6 +162,9 @@ class _Builder:
             source = step.edge.source
             item = source.relation if isinstance(source, Instance) else source.regime
             found.setdefault(item.name, item)
+            members = source.members if isinstance(source, Instance) else ()
+            for relation in (member.instance.relation for member in members):
+                found.setdefault(relation.name, relation)
         for other in self.problem.instances:
             regime = other.regime_variable
             if regime is not None and regime in self.outcome.regimes:

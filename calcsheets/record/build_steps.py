@@ -27,9 +27,11 @@ from .step_model import (
     AlternativeRecord,
     HalvingRecord,
     LimitRecord,
+    MemberRecord,
     MoveRecord,
     Operand,
     RegimeTest,
+    RegimeUse,
     RootRecord,
     StepRecord,
 )
@@ -71,7 +73,6 @@ class StepRecords:
             raise ValueError(f"step {step.edge.target} was not solved")
         quantity = catalogue()[step.edge.target.symbol]
         lower, upper = decimal_bounds(solution.value)
-        condition = source.regime_variable
         return StepRecord(
             number=self.where.steps[step.edge.target],
             key=str(step.edge.target),
@@ -96,10 +97,10 @@ class StepRecords:
             bracket=tuple(float(end) for end in solution.bracket or ()),
             other_roots=tuple(_root(root) for root in solution.other_roots),
             halvings=tuple(HalvingRecord(h.low, h.high, h.residual) for h in solution.halvings),
-            regime_key="" if condition is None else str(condition),
-            regime=source.relation.regime,
+            regimes=tuple(RegimeUse(str(v), outcome) for v, outcome in source.regimes),
             alternatives=tuple(self._alternatives(source, step)),
             test=None,
+            combination=tuple(self._members(source)),
         )
 
     def _regime_step(self, step: StepOutcome, source: RegimeInstance) -> StepRecord:
@@ -131,8 +132,7 @@ class StepRecords:
             bracket=(),
             other_roots=(),
             halvings=(),
-            regime_key="",
-            regime="",
+            regimes=(),
             alternatives=(),
             test=RegimeTest(
                 condition=regime.condition,
@@ -143,7 +143,19 @@ class StepRecords:
                 outcome=found.regime,
                 assumed=found.assumed,
             ),
+            combination=(),
         )
+
+    def _members(self, source: Instance) -> Iterator[MemberRecord]:
+        for member in source.members:
+            yield MemberRecord(
+                relation=member.instance.relation.name,
+                place=member.instance.place.title,
+                key="" if member.gives is None else str(member.gives),
+                symbol=member.symbol,
+                published=member.published,
+                solved=member.solved,
+            )
 
     def _operands(
         self,
@@ -211,7 +223,8 @@ class StepRecords:
         """The same quantity in the other regimes, where everything that it needs is there."""
         for other in self.outcome.problem.instances:
             if (
-                (other.place is not source.place and other.place.name != source.place.name)
+                source.members
+                or (other.place is not source.place and other.place.name != source.place.name)
                 or other.regime_variable != source.regime_variable
                 or other.relation.regime in ("", source.relation.regime)
             ):

@@ -127,6 +127,36 @@ class RegimeTest:
 
 
 @dataclass(frozen=True)
+class RegimeUse:
+    """A regime in which a step holds: the key of the regime and its outcome."""
+
+    key: str
+    outcome: str
+
+
+@dataclass(frozen=True)
+class MemberRecord:
+    """One relation of a coupled set.
+
+    Attributes:
+        relation: name of the relation.
+        place: place in words.
+        key: the variable that it gives once the torn one is known; empty for the relation that
+            closes the loop.
+        symbol: that variable in the symbols of the step; ``None`` likewise.
+        published: the relation in the symbols of the step.
+        solved: its solved form in these symbols; ``None`` likewise.
+    """
+
+    relation: str
+    place: str
+    key: str
+    symbol: Symbol | None
+    published: Equation
+    solved: Expr | None
+
+
+@dataclass(frozen=True)
 class StepRecord:
     """One line of the calculation.
 
@@ -155,10 +185,10 @@ class StepRecord:
         bracket: interval in which the root is the only one, empty for closed forms.
         other_roots: roots not taken.
         halvings: the course of a bisection in the bracket, empty for closed forms.
-        regime_key: variable of the regime on which the relation depends, empty for none.
-        regime: the regime in which the relation holds, empty for none.
+        regimes: the regimes in which the relation holds, empty for all.
         alternatives: the same quantity in other regimes.
         test: the regime test; ``None`` for a relation.
+        combination: the relations that are solved together, where the step is a coupled set.
     """
 
     number: int
@@ -184,10 +214,10 @@ class StepRecord:
     bracket: tuple[float, ...]
     other_roots: tuple[RootRecord, ...]
     halvings: tuple[HalvingRecord, ...]
-    regime_key: str
-    regime: str
+    regimes: tuple[RegimeUse, ...]
     alternatives: tuple[AlternativeRecord, ...]
     test: RegimeTest | None
+    combination: tuple[MemberRecord, ...]
 
     @property
     def within_limits(self) -> bool:

@@ -2,7 +2,7 @@
 
 from .library import STATION_KINDS, Library, load_library
 from .mixtures import mixture_relations
-from .relation import Branch, Chapter, Limit, Process, Regime, Relation, Source
+from .relation import Branch, Chapter, Limit, Process, Regime, Relation, Source, starting_from
 
 __all__ = [
     "STATION_KINDS",
@@ -16,4 +16,5 @@ __all__ = [
     "Source",
     "load_library",
     "mixture_relations",
+    "starting_from",
 ]

@@ -11,7 +11,7 @@ from types import MappingProxyType
 from ..errors import DefinitionError
 from ..expressions import expression_to_mathml
 from . import isentropic, orifices, shocks, streams, thermodynamics, vessels
-from .relation import Chapter, Process, Regime, Relation
+from .relation import Chapter, Process, Regime, Relation, starting_from
 
 STATION_KINDS = ("stream", "vessel")
 
@@ -33,6 +33,7 @@ class Library:
             if names.count(name) > 1:
                 raise DefinitionError(f"relation {name}", "the name is taken twice")
         offers = {*STATION_KINDS, "gas", "site", *self.processes}
+        offers |= {starting_from(p, kind) for p in self.processes for kind in STATION_KINDS}
         for item in items:
             unknown = sorted(set(item.offered_by) - offers)
             if unknown:

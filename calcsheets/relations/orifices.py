@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from ..expressions import sqrt, symbols
-from .relation import Chapter, Limit, Process, Regime, Relation
+from .relation import Chapter, Limit, Process, Regime, Relation, starting_from
 from .roles import INLET, OUTLET
 from .sources import naca_1135, textbook
 from .thermodynamics import CONSTANT_HEATS, PERFECT, REVERSIBLE
@@ -15,7 +15,7 @@ NOT_CHOKED = "not choked"
 gamma, R, mdot, A, C_d = symbols("gamma R mdot A C_d")
 p_0, T_0 = (s.of(INLET) for s in symbols("p_0 T_0"))
 p = symbols("p")[0].of(OUTLET)
-mdot_2 = mdot.of(OUTLET)
+mdot_1, mdot_2 = mdot.of(INLET), mdot.of(OUTLET)
 
 CRITICAL_RATIO = (2 / (gamma + 1)) ** (gamma / (gamma - 1))
 
@@ -77,6 +77,14 @@ CHAPTER = Chapter(
             mdot_2.equals(mdot),
             textbook("Conservation of mass, steady flow"),
             (ORIFICE,),
+            assumptions=("nothing else joins or leaves the stream",),
+        ),
+        Relation(
+            "orifice_approach",
+            "The stream upstream of the orifice",
+            mdot_1.equals(mdot),
+            textbook("Conservation of mass, steady flow"),
+            (starting_from(ORIFICE, "stream"),),
             assumptions=("nothing else joins or leaves the stream",),
         ),
     ),

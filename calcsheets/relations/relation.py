@@ -177,6 +177,11 @@ class Process:
     one_stream: bool = False
 
 
+def starting_from(process: str, station_kind: str) -> str:
+    """Return what offers a relation only where a process starts from one kind of station."""
+    return f"{process} from a {station_kind}"
+
+
 @dataclass(frozen=True)
 class Chapter:
     """The relations of one subject.

@@ -15,11 +15,13 @@ from ..planning import (
     Reach,
     RegimeInstance,
     closing_inputs,
+    loops,
     reach,
 )
 from ..quantities import Variable, catalogue
 from ..relations import Limit
 from .balls import Ball, OutsideDomainError, evaluate, exact_ball, working_precision
+from .coupled import Combiner
 from .solve import Question, Solution, compare, solve
 
 _MOST_ASSUMED = 4
@@ -79,6 +81,7 @@ class _Run:
     values: dict[Variable, Ball] = field(default_factory=dict)
     regimes: dict[Variable, str] = field(default_factory=dict)
     solved: dict[Variable, StepOutcome] = field(default_factory=dict)
+    coupled: list[Edge] = field(default_factory=list)
 
     def __post_init__(self) -> None:
         self.regimes.update(self.assumed)
@@ -90,7 +93,9 @@ class _Run:
         """Search, decide the regimes that can be decided, and search again."""
         tried: set[Variable] = set()
         while True:
-            reached = reach(self.problem, self.regimes, frozenset(self.assumed))
+            reached = reach(
+                self.problem, self.regimes, frozenset(self.assumed), further=self.coupled
+            )
             undecided = [
                 variable
                 for variable in reached.edges
@@ -99,10 +104,32 @@ class _Run:
                 and variable not in tried
             ]
             if not undecided:
-                return reached
+                coupled = self._couple(reached)
+                if coupled is None:
+                    return reached
+                self.coupled.append(coupled)
             for variable in undecided:
                 tried.add(variable)
                 self._decide(reached, variable)
+
+    def _couple(self, reached: Reach) -> Edge | None:
+        """The smallest coupled set that leads on, where a wanted quantity does not follow."""
+        missing = _missing(self.problem, reached)
+        if not missing:
+            return None
+        assumed = frozenset(self.assumed)
+        combiner = Combiner(self.problem, self.values, assumed)
+        for loop in loops(self.problem, self.regimes, assumed, reached, missing):
+            needed = {v for edge in loop.derivation for v in edge.inputs}
+            needed |= set(loop.closing.binding.values())
+            try:
+                self.execute(reached.needed(sorted(v for v in needed if v in reached.edges)))
+            except SolvingError:
+                continue
+            edge = combiner.edge(loop)
+            if edge is not None and all(item in reached for item in edge.inputs):
+                return edge
+        return None
 
     def _decide(self, reached: Reach, variable: Variable) -> None:
         try:
@@ -140,7 +167,7 @@ class _Run:
         unknown = edge.unknown
         if unknown is None:
             raise NotEnoughInputs(str(edge.target), "", ())
-        conditions = tuple(self._conditions(source))
+        conditions = (*self._conditions(source), *source.conditions)
         symbols = {*source.relation.symbols, *(s for c in conditions for s in c.symbols)}
         bound = {symbol: source.place.variable(symbol) for symbol in symbols}
         values = {
@@ -178,6 +205,7 @@ class _Run:
         wanted = [item.variable for item in self.problem.brief.wanted]
         tests = [variable for variable in self.assumed if variable in reached.edges]
         targets = [*wanted, *tests]
+        targets = [*self._solved_together(reached.needed(targets)), *targets]
         edges = reached.needed(targets)
         self.execute(edges)
         edges = self._with_limits(reached, targets, edges)
@@ -188,6 +216,17 @@ class _Run:
             dict(self.regimes),
             reached,
         )
+
+    def _solved_together(self, edges: tuple[Edge, ...]) -> list[Variable]:
+        """Every unknown of the coupled sets among some edges, so that all of a set is shown."""
+        needed = {edge.target for edge in edges}
+        return [
+            variable
+            for edge in self.coupled
+            if edge.target in needed and isinstance(edge.source, Instance)
+            for variable in (edge.target, *(m.gives for m in edge.source.members))
+            if variable is not None
+        ]
 
     def _with_limits(
         self, reached: Reach, targets: list[Variable], edges: tuple[Edge, ...]
@@ -315,8 +354,9 @@ def _distinct(outcomes: list[Outcome], tests: list[Variable]) -> list[Outcome]:
     """Outcomes that differ only in a regime that no step depends on are one outcome."""
     kept: dict[tuple[str, ...], Outcome] = {}
     for outcome in outcomes:
-        used = {step.edge.source.regime_variable for step in outcome.steps
-                if isinstance(step.edge.source, Instance)}  # fmt: skip
+        sources = (step.edge.source for step in outcome.steps)
+        instances = (source for source in sources if isinstance(source, Instance))
+        used = {variable for instance in instances for variable, _ in instance.regimes}
         key = tuple(outcome.regimes[test] if test in used else "" for test in tests)
         kept.setdefault(key, outcome)
     return list(kept.values())

@@ -111,7 +111,9 @@ def test_the_order_of_keys_inside_tables_of_values_changes_no_byte() -> None:
 def test_only_needed_steps_are_taken_each_after_its_inputs(path: Any) -> None:
     record = calcsheets.calculate(calcsheets.read_brief(path))
     used = {operand.key for step in record.steps for operand in step.operands}
-    used |= {step.regime_key for step in record.steps} | {result.key for result in record.results}
+    used |= {use.key for step in record.steps for use in step.regimes} | {
+        result.key for result in record.results
+    }
     done: set[str] = {item.key for item in record.inputs}
     for step in record.steps:
         assert step.key in used, f"{step.key} is needed by nothing"

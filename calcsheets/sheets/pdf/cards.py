@@ -100,6 +100,7 @@ class Card:
     relation: RelationRecord
     known: str
     symbol: Markup | None
+    together: tuple[Line, ...]
     published: Line
     lines: tuple[Line, ...]
     substituted: Markup
@@ -132,6 +133,7 @@ def _card(record: Record, step: StepRecord, width: float) -> Card:
         relation=relation,
         known=known_text(relation),
         symbol=None if step.test else symbol_html(step.symbol),
+        together=tuple(_together(record, step, width)),
         published=_line(f"{step.number}.1", published, width),
         lines=lines,
         substituted=_substituted(step, relation, width),
@@ -144,6 +146,18 @@ def _card(record: Record, step: StepRecord, width: float) -> Card:
         where=(*_operands(step), *_constants(published)),
         results=tuple(line for line in result_lines(record) if line.result.step == step.number),
     )
+
+
+def _together(record: Record, step: StepRecord, width: float) -> Iterator[Line]:
+    """The relations of a coupled set, and what each but the last is solved for."""
+    letters = iter("abcdefghijklmnopqrstuvwxyz")
+    for member in step.combination:
+        words = f"{record.relation(member.relation).title}, {member.place}"
+        yield _line(f"{step.number}.{next(letters)}", member.published, width, words)
+        if member.symbol is not None and member.solved is not None:
+            solved = Equation(member.symbol, member.solved)
+            if solved != member.published:
+                yield _line(f"{step.number}.{next(letters)}", solved, width, "solved")
 
 
 def _lines(step: StepRecord, width: float) -> Iterator[Line]:

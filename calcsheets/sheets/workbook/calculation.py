@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Mapping, Set
 
 from ...expressions import Condition, Equation, Symbol
 from ...record import LimitRecord, Record, StepRecord
@@ -44,8 +44,9 @@ def write_calculation(page: Page, record: Record, cells: Cells, roots: Mapping[i
         "for which this sheet holds no relation; prepare the brief again.",
         _COLUMNS,
     )
+    assumed = {step.key for step in record.steps if step.test and step.test.assumed}
     for index, step in enumerate(record.steps):
-        _row(page, FIRST_ROW + index, record, step, cells, roots)
+        _row(page, FIRST_ROW + index, record, step, cells, roots, assumed)
 
 
 def _row(
@@ -55,6 +56,7 @@ def _row(
     step: StepRecord,
     cells: Cells,
     roots: Mapping[int, str],
+    assumed: Set[str],
 ) -> None:
     relation = record.relation(step.relation)
     page.number(row, 0, step.number)
@@ -63,7 +65,9 @@ def _row(
     page.text(row, 3, step.place)
     page.text(row, 5, unit_text(step.unit) if step.unit else "")
     page.text(row, 6, f"{relation.title}\n{relation.source}")
-    page.text(row, 7, f"{plain_text(relation.published)}\n{_solved_text(step)}")
+    together = [plain_text(member.published) for member in step.combination]
+    shown = [*together, plain_text(relation.published), _solved_text(step)]
+    page.text(row, 7, "\n".join(shown))
     page.text(row, 8, "; ".join(plain_text(limit.condition) for limit in step.limits))
     value = reference(CALCULATION, row, STEP_VALUE)
     issued = reference(CALCULATION, row, _ISSUED)
@@ -78,7 +82,12 @@ def _row(
     found = step.value or 0.0
     size = double_size(found, step.double_error)
     page.formula(
-        row, STEP_VALUE, _value_formula(step, cells, roots), found, page.value_style(found), size
+        row,
+        STEP_VALUE,
+        _value_formula(step, cells, roots, assumed),
+        found,
+        page.value_style(found),
+        size,
     )
     _write_limits(page, row, step, cells)
     page.value(row, _ISSUED, found)
@@ -101,18 +110,26 @@ def _test_formula(step: StepRecord, cells: Cells) -> str:
     return f'IF({condition},"{test.when_true}","{test.when_false}")'
 
 
-def _value_formula(step: StepRecord, cells: Cells, roots: Mapping[int, str]) -> str:
+def _value_formula(
+    step: StepRecord, cells: Cells, roots: Mapping[int, str], assumed: Set[str]
+) -> str:
+    """The live formula of a step.
+
+    A regime that was assumed and confirmed afterwards follows from the step itself and cannot
+    switch it without a circle; the results watch such a regime.
+    """
     text = (
         roots[step.number] if step.solved is None else formula(step.solved, cells.of(step.operands))
     )
-    if not step.regime_key or step.regime_key not in cells.by_key:
-        return text
-    regime = cells.by_key[step.regime_key]
-    other = "NA()"
-    for alternative in step.alternatives:
-        value = formula(alternative.solved, cells.of(alternative.operands))
-        other = f'IF({regime}="{alternative.regime}",{value},{other})'
-    return f'IF({regime}="{step.regime}",{text},{other})'
+    for use in step.regimes:
+        if use.key not in cells.by_key or use.key in assumed:
+            continue
+        regime, other = cells.by_key[use.key], "NA()"
+        for alternative in step.alternatives:
+            value = formula(alternative.solved, cells.of(alternative.operands))
+            other = f'IF({regime}="{alternative.regime}",{value},{other})'
+        text = f'IF({regime}="{use.outcome}",{text},{other})'
+    return text
 
 
 def _write_limits(page: Page, row: int, step: StepRecord, cells: Cells) -> None:

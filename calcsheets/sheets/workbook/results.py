@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from fractions import Fraction
 
 from ...record import CriterionRecord, Record, ResultRecord
@@ -35,11 +36,17 @@ def write_results(page: Page, record: Record, cells: Cells) -> None:
         "Compared unrounded, shown rounded. Values follow the inputs, verdicts the values.",
         _COLUMNS,
     )
+    watched = [
+        f'{cells.by_key[step.key]}="{step.test.outcome}"'
+        for step in record.steps
+        if step.test and step.test.assumed
+    ]
     for index, result in enumerate(record.results):
-        _row(page, FIRST_ROW + index, result, cells)
+        _row(page, FIRST_ROW + index, result, cells, watched)
 
 
-def _row(page: Page, row: int, result: ResultRecord, cells: Cells) -> None:
+def _row(page: Page, row: int, result: ResultRecord, cells: Cells, watched: Sequence[str]) -> None:
+    """One result; #N/A where a regime that was assumed is no longer the one of the issue."""
     page.number(row, 0, result.number)
     page.text(row, 1, result.title, page.styles.strong)
     page.text(row, 2, "" if result.state else symbol_text(result.symbol))
@@ -59,7 +66,10 @@ def _row(page: Page, row: int, result: ResultRecord, cells: Cells) -> None:
         return
     style = page.value_style(result.value, result.digits)
     size = double_size(result.value, result.double_error)
-    page.formula(row, RESULT_VALUE, _in_unit(source, result), result.value, style, size)
+    shown = _in_unit(source, result)
+    if watched:
+        shown = f"IF(AND({','.join(watched)}),{shown},NA())"
+    page.formula(row, RESULT_VALUE, shown, result.value, style, size)
     page.value(row, _ISSUED, result.value, result.digits)
     page.change(row, CHANGE, value, issued, size)
     _write_criterion(page, row, result, value)
