@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterable, Iterator, Mapping
 from dataclasses import dataclass, replace
 from fractions import Fraction
+from itertools import pairwise
 
 from flint import arb
 
@@ -12,10 +13,11 @@ from ..expressions import Condition, Equation, Expr, Number, Symbol, substitute,
 from ..planning import Edge, Instance, Loop, Member, Place, Problem
 from ..quantities import Variable, catalogue
 from ..relations import Branch, Limit, Relation, Source
-from .balls import Ball, OutsideDomainError, evaluate, exact_ball
+from .balls import Ball, OutsideDomainError, evaluate, exact_ball, midpoint
 from .moves import isolate
 
 _FACTORS = tuple(Fraction(text) for text in ("0.83", "1.21", "0.47", "2.3", "0.11", "9.7"))
+_PARTS = (Fraction(37, 100), Fraction(81, 100))
 _POWERS = (0, -1, 1, -2, 2, 3, 4, 5, -3, -4, 6)
 _LEAST_DECIDING = 3
 _SAME = arb(2) ** -80
@@ -125,7 +127,7 @@ def _closed_form(edge: Edge) -> _Derived | None:
 
 
 def _tries(variable: Variable, values: Mapping[Variable, Ball]) -> Iterator[Ball]:
-    """Values to try: around known ones of the same dimension, then over all magnitudes."""
+    """Values to try: between and around known ones of the dimension, then all magnitudes."""
     quantity = catalogue()[variable.symbol]
     low, high = exact_ball(quantity.low), exact_ball(quantity.high)
     alike = [
@@ -133,9 +135,11 @@ def _tries(variable: Variable, values: Mapping[Variable, Ball]) -> Iterator[Ball
         for other, value in sorted(values.items())
         if catalogue()[other.symbol].dimension == quantity.dimension
     ]
+    alike = sorted({float(value.mid()): value for value in alike}.values(), key=midpoint)
+    between = [a + (b - a) * exact_ball(part) for part in _PARTS for a, b in pairwise(alike)]
     around = [value * exact_ball(factor) for factor in _FACTORS for value in alike]
     magnitudes = [exact_ball(Fraction(10) ** power) for power in _POWERS]
-    for value in (*around, *magnitudes):
+    for value in (*between, *around, *magnitudes):
         if low < value < high:
             yield value
 
