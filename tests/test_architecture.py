@@ -28,6 +28,7 @@ ORDER = (
     ("checking",),
     ("package",),
     ("cli",),
+    ("__main__",),
 )
 LEVEL = {name: index for index, names in enumerate(ORDER) for name in names}
 

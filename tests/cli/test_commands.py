@@ -178,3 +178,10 @@ def test_help_does_not_load_what_it_does_not_need() -> None:
         [sys.executable, "-c", code], cwd=ROOT, capture_output=True, text=True, check=True
     )
     assert done.stdout.strip() == "[]"
+
+
+def test_the_package_runs_as_a_module() -> None:
+    done = subprocess.run(
+        [sys.executable, "-m", "calcsheets", "--help"], capture_output=True, text=True, check=True
+    )
+    assert "prepare" in done.stdout
