@@ -36,7 +36,7 @@ class OutsideDomainError(ArithmeticError):
     """An operation has no real value anywhere in its operand's ball."""
 
 
-_FUNCTIONS: Mapping[str, Callable[[Ball], Ball]] = MappingProxyType(
+BALL_FUNCTIONS: Mapping[str, Callable[[Ball], Ball]] = MappingProxyType(
     {
         "exp": lambda x: x.exp(),
         "ln": lambda x: _inside(x, x > 0 or x.contains(0)).log(),
@@ -94,11 +94,14 @@ def evaluate(expr: Expr, values: Mapping[Symbol, Ball]) -> Ball:
         case Negative(operand):
             return -evaluate(operand, values)
         case Power(base, exponent):
-            return _power(evaluate(base, values), exponent, values)
+            raised = evaluate(base, values)
+            if isinstance(exponent, Number) and exponent.value.denominator == 1:
+                return raised ** int(exponent.value)
+            return ball_power(raised, evaluate(exponent, values))
         case Root(radicand):
-            return _root(evaluate(radicand, values))
+            return ball_root(evaluate(radicand, values))
         case Function(name, argument):
-            return _FUNCTIONS[name](evaluate(argument, values))
+            return BALL_FUNCTIONS[name](evaluate(argument, values))
         case Integral():
             return _integral(expr, values)
     raise DefinitionError(f"expression {expr!r}", "it is no node of an expression tree")
@@ -110,7 +113,12 @@ def _inside(ball: Ball, possible: bool) -> Ball:
     return ball
 
 
-def _root(radicand: Ball) -> Ball:
+def ball_root(radicand: Ball) -> Ball:
+    """Return the ball of a square root, over the part of the radicand that is not negative.
+
+    Raises:
+        OutsideDomainError: if it is negative all over.
+    """
     if radicand < 0:
         raise OutsideDomainError
     if radicand.contains(0):
@@ -118,12 +126,14 @@ def _root(radicand: Ball) -> Ball:
     return radicand.sqrt()
 
 
-def _power(base: Ball, exponent: Expr, values: Mapping[Symbol, Ball]) -> Ball:
-    if isinstance(exponent, Number) and exponent.value.denominator == 1:
-        return base ** int(exponent.value)
+def ball_power(base: Ball, power: Ball) -> Ball:
+    """Return the ball of a power, over the part of the base that is not negative.
+
+    Raises:
+        OutsideDomainError: if the base is negative all over.
+    """
     if base < 0:
         raise OutsideDomainError
-    power = evaluate(exponent, values)
     if base.contains(0) and power > 0 and base.upper() > 0:
         largest = arb(base.upper())
         return arb(0).union(largest**power if largest > 1 else arb(1).union(largest**power))

@@ -14,6 +14,7 @@ from fractions import Fraction
 from flint import arb
 
 from .balls import Ball, OutsideDomainError, exact_ball
+from .taylor import TaylorForm
 
 _SMALLEST = Fraction(1, 10**12)
 _MOST_CELLS = 20_000
@@ -42,7 +43,11 @@ class TooManyCellsError(ArithmeticError):
 
 
 def isolate_roots(
-    function: BallFunction, slope: BallFunction, low: Fraction, high: Fraction
+    function: BallFunction,
+    slope: BallFunction,
+    low: Fraction,
+    high: Fraction,
+    form: Callable[[Ball], TaylorForm | None] = lambda cell: None,
 ) -> tuple[RootFound, ...]:
     """Return every root between two bounds, in rising order.
 
@@ -51,10 +56,16 @@ def isolate_roots(
         slope: its derivative.
         low: lower bound; zero itself is left out.
         high: upper bound.
+        form: its Taylor form over a cell; ``None`` where it has none.
 
     Raises:
         TooManyCellsError: if the search does not end within its limit.
     """
+
+    def slope_over(cell: Ball) -> Ball:
+        taylor = form(cell)
+        return slope(cell) if taylor is None else taylor.slope
+
     found: list[RootFound] = []
     undecided: list[tuple[Fraction, Fraction]] = []
     cells = list(reversed(list(_first_cells(low, high))))
@@ -68,14 +79,17 @@ def isolate_roots(
         value = _defined(function, ball)
         if value is None or (value.is_finite() and not value.contains(0)):
             continue
-        rate = slope(ball)
-        if rate.is_finite() and _excluded(function, rate, ball):
+        taylor = form(ball)
+        if taylor is not None and not taylor.value.contains(0):
+            continue
+        rate = slope(ball) if taylor is None else taylor.slope
+        if taylor is None and rate.is_finite() and _excluded(function, rate, ball):
             continue
         if rate.is_finite() and not rate.contains(0):
             crossing = _crossing(function, a, b)
             if crossing is not None:
                 if crossing:
-                    found.append(RootFound(_refine(function, slope, a, b), False))
+                    found.append(RootFound(_refine(function, slope_over, a, b), False))
                 continue
         if b - a <= _SMALLEST * max(abs(a), abs(b), _TINY):
             # Not finite down to the smallest width is a pole or the edge of the domain.

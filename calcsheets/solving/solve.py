@@ -14,10 +14,12 @@ from ..expressions import Condition, Expr, Function, Number, Sum, Symbol, deriva
 from ..relations import Relation
 from .balls import Ball, OutsideDomainError, evaluate, exact_ball, midpoint
 from .bisection import Halving, halvings
+from .bound import BALLS, bind
 from .logarithms import logarithm_of
 from .moves import Move, isolate
 from .polynomials import polynomial_form
 from .roots import TooManyCellsError, isolate_roots
+from .taylor import taylor_form
 
 _SAMPLES = 64
 _NARROWINGS = 80
@@ -234,10 +236,11 @@ def _roots(question: Question) -> tuple[Ball, ...]:
     low, high = bounds_of(replace(question, branch=""))
     try:
         found = isolate_roots(
-            lambda x: evaluate(difference, {**values, question.unknown: x}),
-            lambda x: evaluate(slope, {**values, question.unknown: x}),
+            bind(difference, values, question.unknown, BALLS),
+            bind(slope, values, question.unknown, BALLS),
             low,
             high,
+            taylor_form(difference, values, question.unknown),
         )
     except TooManyCellsError as problem:
         raise UndecidedRoots(

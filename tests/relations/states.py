@@ -6,8 +6,8 @@ import random
 from collections.abc import Mapping
 from fractions import Fraction
 
-from calcsheets.expressions import Symbol
-from calcsheets.relations import Relation
+from calcsheets.expressions import Condition, Symbol
+from calcsheets.relations import Relation, load_library
 from calcsheets.solving import (
     Ball,
     compare,
@@ -31,6 +31,7 @@ RANGES: Mapping[str, tuple[float, float]] = {
     "w_b": (-2e5, 2e5), "dh": (-2e5, 2e5), "de": (-2e5, 2e5), "ds": (-500.0, 500.0),
 }  # fmt: skip
 _TRIES = 4000
+_OPPOSITE = {"<=": ">", "<": ">=", ">=": "<", ">": "<="}
 
 
 def range_of(symbol: Symbol) -> tuple[float, float]:
@@ -41,6 +42,22 @@ def range_of(symbol: Symbol) -> tuple[float, float]:
     if name in RANGES:
         return RANGES[name]
     return (0.01, 100.0)
+
+
+def regime_conditions(relation: Relation) -> tuple[Condition, ...]:
+    """What the regime of a relation asks of its own quantities, where it can be said in them."""
+    found = []
+    for regime in load_library().regimes:
+        if not set(regime.offered_by) & set(relation.offered_by) or relation.regime_role:
+            continue
+        if not set(regime.condition.symbols) <= set(relation.symbols):
+            continue
+        if relation.regime == regime.when_true:
+            found.append(regime.condition)
+        elif relation.regime == regime.when_false:
+            test = regime.condition
+            found.append(Condition(test.left, _OPPOSITE[test.comparison], test.right))
+    return tuple(found)
 
 
 def random_states(relation: Relation, count: int, seed: int) -> list[dict[Symbol, Ball]]:
@@ -82,6 +99,6 @@ def _possible(relation: Relation, dependent: Symbol, state: Mapping[Symbol, Ball
     # A value far outside the field shows nothing but rounding.
     if not 1e-9 < abs(midpoint(value)) < 1e9:
         return False
-    conditions = [limit.condition for limit in relation.limits]
+    conditions = [*regime_conditions(relation), *(limit.condition for limit in relation.limits)]
     known = [c for c in conditions if set(c.symbols) <= set(state)]
     return all(compare(condition, state) is True for condition in known)

@@ -14,7 +14,7 @@ from scipy.optimize import brentq
 
 import calcsheets
 from calcsheets.checking.decimals import evaluate_decimal
-from calcsheets.errors import NoRoot, SeveralRoots, UndecidedRoots
+from calcsheets.errors import NoRoot, SeveralRoots
 from calcsheets.expressions import Symbol, symbols
 from calcsheets.record import Record, StepRecord
 from calcsheets.relations import Limit, load_library
@@ -175,11 +175,10 @@ def test_a_pitot_reading_below_that_of_sonic_flow_has_no_shock() -> None:
     assert "there the relation reaches 1.892929 to" in str(caught.value)
 
 
-def test_a_shock_without_strength_is_not_called_impossible() -> None:
-    """M = 1 is a threefold root; the search says that it found no end, not that there is none."""
-    with pytest.raises(UndecidedRoots) as caught:
-        answer("shock_stagnation_pressure", "M__1", p_0__1="1", p_0__2="1", gamma="1.4")
-    assert "nothing is known about its roots" in str(caught.value)
+def test_a_shock_without_strength_stands_at_the_speed_of_sound() -> None:
+    """M = 1 is a threefold root: the definition of the weakest shock."""
+    found = answer("shock_stagnation_pressure", "M__1", p_0__1="1", p_0__2="1", gamma="1.4")
+    assert midpoint(found.value) == pytest.approx(1, abs=1e-9)
 
 
 def test_an_area_below_the_critical_one_has_no_root() -> None:
