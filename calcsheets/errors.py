@@ -13,7 +13,8 @@
     │   ├── NoRoot               with the range that the relation can reach
     │   ├── SeveralRoots         with every root, and the question to answer
     │   ├── OutsideLimit         a relation means nothing at the values reached
-    │   └── UndecidedRoots       the search did not come to an end
+    │   ├── UndecidedRoots       the search did not come to an end
+    │   └── UntabulatedIntegral  no sum over places comes near an integral
     ├── CheckError               an independent engine disagrees with the program
     └── OutputError              a file cannot be written
 
@@ -307,6 +308,26 @@ class OutsideLimit(SolvingError):
         return (
             f"{self.relation}, for {self.unknown}: {self.limit}, and the inputs lead to values "
             "outside that. Check the inputs of this step."
+        )
+
+
+@dataclass(eq=False)
+class UntabulatedIntegral(SolvingError):
+    """An integral that no sum of the workbook comes near.
+
+    Attributes:
+        variable: what it runs over.
+        places: how many places were tried at most.
+    """
+
+    variable: str
+    places: int
+
+    def __str__(self) -> str:
+        return (
+            f"the integral over {self.variable}: a sum over {self.places} places does not give it "
+            "to the digits of a workbook. Check the inputs of this step: the integrand may be "
+            "without bound at a limit, or change sharply between them."
         )
 
 

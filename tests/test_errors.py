@@ -25,6 +25,7 @@ from calcsheets.errors import (
     UndecidedRoots,
     UnitError,
     UnknownGas,
+    UntabulatedIntegral,
 )
 
 CASES: list[tuple[CalcsheetsError, str]] = [
@@ -87,6 +88,12 @@ CASES: list[tuple[CalcsheetsError, str]] = [
         SeveralRoots("Area and Mach number", "M@x", ("0.3", "2.2"), (), "stations.x"),
         "Area and Mach number: M@x may be 0.3 or 2.2. Which is meant? Give M@x, or an input that "
         "decides it.",
+    ),
+    (
+        UntabulatedIntegral("y", 128),
+        "the integral over y: a sum over 128 places does not give it to the digits of a workbook. "
+        "Check the inputs of this step: the integrand may be without bound at a limit, or change "
+        "sharply between them.",
     ),
     (
         OutsideLimit("Normal shock", "p@b", "a shock stands only in supersonic flow"),

@@ -59,13 +59,12 @@ def _candidates(
     while layer:
         following: list[Variable] = []
         for instance in problem.instances:
-            condition = instance.regime_variable
-            regime = instance.relation.regime
-            if condition is not None and regimes.get(condition, regime) != regime:
+            if any(regimes.get(v, regime) != regime for v, regime in instance.regimes):
                 continue
             variables = list(instance.binding.values())
-            if condition is not None and condition not in regimes:
-                variables += problem.regimes[condition].binding.values()
+            for condition, _ in instance.regimes:
+                if condition not in regimes:
+                    variables += problem.regimes[condition].binding.values()
             if not any(variable in layer for variable in variables):
                 continue
             for variable in variables:

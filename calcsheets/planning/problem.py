@@ -87,7 +87,9 @@ class Instance:
     def regimes(self) -> tuple[tuple[Variable, str], ...]:
         """Every regime on which it depends, with the outcome in which it holds."""
         variable = self.regime_variable
-        own = () if variable is None else ((variable, self.relation.regime),)
+        own = [] if variable is None else [(variable, self.relation.regime)]
+        for role, outcome in self.relation.also:
+            own.append((Variable("regime", self.place.roles[role]), outcome))
         of_members = (use for member in self.members for use in member.instance.regimes)
         return tuple(dict.fromkeys((*own, *of_members)))
 

@@ -171,11 +171,10 @@ def offered_edges(
 ) -> Iterator[Edge]:
     """Yield every way from a relation or regime test to one of its variables; see :func:`reach`."""
     for instance in problem.instances:
-        condition, regime = instance.regime_variable, instance.relation.regime
-        undecided = regime if open_regimes else None
-        if condition is not None and regimes.get(condition, undecided) != regime:
+        uses = instance.regimes
+        if any(regimes.get(v, regime if open_regimes else None) != regime for v, regime in uses):
             continue
-        before = () if condition is None or condition in assumed else (condition,)
+        before = tuple(variable for variable, _ in uses if variable not in assumed)
         yield from _relation_edges(instance, before)
     for test in problem.regimes.values():
         inputs = tuple(dict.fromkeys(test.binding.values()))

@@ -21,14 +21,17 @@ from .model import (
 from .step_model import (
     AlternativeRecord,
     HalvingRecord,
+    IntegralRecord,
     LimitRecord,
     MemberRecord,
     MoveRecord,
+    NodeRecord,
     Operand,
     RegimeTest,
     RegimeUse,
     RootRecord,
     StepRecord,
+    SumRecord,
 )
 
 __all__ = [
@@ -40,10 +43,12 @@ __all__ = [
     "FieldRecord",
     "HalvingRecord",
     "InputRecord",
+    "IntegralRecord",
     "LegRecord",
     "LimitRecord",
     "MemberRecord",
     "MoveRecord",
+    "NodeRecord",
     "Operand",
     "Record",
     "ReferenceRecord",
@@ -55,6 +60,7 @@ __all__ = [
     "SourceRecord",
     "StationRecord",
     "StepRecord",
+    "SumRecord",
     "digest_of",
     "read_record",
     "record_bytes",

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import hashlib
-from collections.abc import Iterator, Mapping
+from collections.abc import Iterator
 from dataclasses import dataclass
 from importlib.metadata import PackageNotFoundError, version
 
@@ -12,7 +12,7 @@ from ..expressions import Symbol, decimal_text
 from ..planning import Instance, Problem
 from ..quantities import Variable, catalogue
 from ..relations import Regime, Relation, Source
-from ..solving import Outcome, StepOutcome, double_errors, midpoint, working_precision
+from ..solving import Doubles, Outcome, StepOutcome, in_doubles, midpoint, working_precision
 from .build_results import ResultRecords
 from .build_steps import Numbers, StepRecords
 from .checks import consistency_checks
@@ -38,9 +38,9 @@ def build_record(outcome: Outcome, library_digest: str, changed: tuple[str, ...]
     Raises:
         ContradictoryInputs: if a relation that was not needed disagrees with the values.
     """
-    errors = double_errors(outcome)
+    doubles = in_doubles(outcome)
     with working_precision():
-        return _Builder(outcome, errors).record(library_digest, changed)
+        return _Builder(outcome, doubles).record(library_digest, changed)
 
 
 def program_name() -> str:
@@ -54,7 +54,7 @@ def program_name() -> str:
 @dataclass(frozen=True)
 class _Builder:
     outcome: Outcome
-    double_errors: Mapping[Variable, float]
+    doubles: Doubles
 
     @property
     def problem(self) -> Problem:
@@ -72,9 +72,9 @@ class _Builder:
             step.edge.target: number for number, step in enumerate(self.outcome.steps, start=1)
         }
         where = Numbers(inputs, steps)
-        step_records = StepRecords(self.outcome, self.double_errors, where)
+        step_records = StepRecords(self.outcome, self.doubles, where)
         made = tuple(step_records.step(step) for step in self.outcome.steps)
-        results = ResultRecords(self.outcome, self.double_errors, where, made)
+        results = ResultRecords(self.outcome, self.doubles, where, made)
         relations = tuple(self._relations())
         return Record(
             schema=SCHEMA,

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator, Mapping
+from collections.abc import Iterator
 from dataclasses import dataclass
 from decimal import ROUND_HALF_EVEN, Context, Decimal
 from fractions import Fraction
@@ -10,7 +10,7 @@ from fractions import Fraction
 from ..brief import Wanted
 from ..expressions import Symbol, decimal_text
 from ..quantities import Unit, Variable, catalogue
-from ..solving import Ball, Outcome, exact_ball, midpoint
+from ..solving import Ball, Doubles, Outcome, exact_ball, midpoint
 from .build_steps import Numbers
 from .model import CriterionRecord, ResultRecord
 from .step_model import StepRecord
@@ -22,13 +22,13 @@ class ResultRecords:
 
     Attributes:
         outcome: the solved problem.
-        double_errors: bound on the error of each value in doubles.
+        doubles: what double precision leaves of each value.
         where: number of each input and step.
         steps: the record of each step, in order.
     """
 
     outcome: Outcome
-    double_errors: Mapping[Variable, float]
+    doubles: Doubles
     where: Numbers
     steps: tuple[StepRecord, ...]
 
@@ -60,7 +60,7 @@ class ResultRecords:
         )
 
     def _error_in_unit(self, wanted: Wanted) -> float:
-        error = self.double_errors.get(wanted.variable, 0.0)
+        error = self.doubles.errors.get(wanted.variable, 0.0)
         return 0.0 if wanted.unit is None else error / float(wanted.unit.factor)
 
     def _criteria(self, wanted: Wanted, value: Ball | None) -> Iterator[CriterionRecord]:

@@ -4,28 +4,36 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Iterator, Mapping
 from dataclasses import dataclass
-from decimal import ROUND_HALF_EVEN, Context
 
-from ..expressions import Symbol
+from ..errors import UntabulatedIntegral
+from ..expressions import Expr, Symbol
 from ..planning import Instance, RegimeInstance
 from ..quantities import Variable, catalogue
 from ..solving import (
     Ball,
+    Doubles,
+    Halving,
     Move,
     OtherRoot,
     Outcome,
+    OutsideDomainError,
     Solution,
     StepOutcome,
+    Table,
     compare,
     decimal_bounds,
     evaluate,
     isolate,
     midpoint,
     size_of,
+    tables_of,
 )
+from .build_integrals import integral_record, sum_record
+from .digits import certified_digits
 from .step_model import (
     AlternativeRecord,
     HalvingRecord,
+    IntegralRecord,
     LimitRecord,
     MemberRecord,
     MoveRecord,
@@ -35,8 +43,6 @@ from .step_model import (
     RootRecord,
     StepRecord,
 )
-
-_MOST_DIGITS = 15
 
 
 @dataclass(frozen=True)
@@ -56,12 +62,12 @@ class StepRecords:
 
     Attributes:
         outcome: the solved problem.
-        double_errors: bound on the error of each value in doubles.
+        doubles: what double precision leaves of each value.
         where: number of each input and step.
     """
 
     outcome: Outcome
-    double_errors: Mapping[Variable, float]
+    doubles: Doubles
     where: Numbers
 
     def step(self, step: StepOutcome) -> StepRecord:
@@ -73,6 +79,7 @@ class StepRecords:
             raise ValueError(f"step {step.edge.target} was not solved")
         quantity = catalogue()[step.edge.target.symbol]
         lower, upper = decimal_bounds(solution.value)
+        bisection = solution.bisection
         return StepRecord(
             number=self.where.steps[step.edge.target],
             key=str(step.edge.target),
@@ -89,15 +96,17 @@ class StepRecords:
             lower=lower,
             upper=upper,
             certified_digits=certified_digits(lower, upper),
-            double_error=self.double_errors[step.edge.target],
+            double_error=self.doubles.errors[step.edge.target],
             residual=self._relative_residual(source, solution),
             limits=tuple(self._limits(source)),
             limit_operands=self._limit_operands(source),
             branch=solution.branch,
             bracket=tuple(float(end) for end in solution.bracket or ()),
             other_roots=tuple(_root(root) for root in solution.other_roots),
-            halvings=tuple(HalvingRecord(h.low, h.high, h.residual) for h in solution.halvings),
-            regimes=tuple(RegimeUse(str(v), outcome) for v, outcome in source.regimes),
+            halvings=tuple(_halving(row) for row in bisection.rows) if bisection else (),
+            integrals=self._tables(source, solution.tables),
+            start_integrals=tuple(sum_record(t) for t in bisection.start) if bisection else (),
+            regimes=_uses(source),
             alternatives=tuple(self._alternatives(source, step)),
             test=None,
             combination=tuple(self._members(source)),
@@ -132,6 +141,8 @@ class StepRecords:
             bracket=(),
             other_roots=(),
             halvings=(),
+            integrals=(),
+            start_integrals=(),
             regimes=(),
             alternatives=(),
             test=RegimeTest(
@@ -144,6 +155,14 @@ class StepRecords:
                 assumed=found.assumed,
             ),
             combination=(),
+        )
+
+    def _tables(self, source: Instance, tables: tuple[Table, ...]) -> tuple[IntegralRecord, ...]:
+        values = self._values(source, source.relation.symbols)
+        errors = (self.doubles.of_table(table, source.binding) for table in tables)
+        return tuple(
+            integral_record(table, values, error)
+            for table, error in zip(tables, errors, strict=True)
         )
 
     def _members(self, source: Instance) -> Iterator[MemberRecord]:
@@ -225,8 +244,7 @@ class StepRecords:
             if (
                 source.members
                 or (other.place is not source.place and other.place.name != source.place.name)
-                or other.regime_variable != source.regime_variable
-                or other.relation.regime in ("", source.relation.regime)
+                or not self._excludes(other, source)
             ):
                 continue
             unknown = next((s for s, v in other.binding.items() if v == step.edge.target), None)
@@ -235,24 +253,43 @@ class StepRecords:
             others = [v for v in other.binding.values() if v != step.edge.target]
             isolation = isolate(other.relation.published, unknown)
             if isolation is not None and all(v in self.where for v in others):
-                operands = self._operands(other, other.relation.symbols, unknown)
+                integrals = self._integrals_of(other, isolation.solved)
+                if integrals is None:
+                    continue
                 yield AlternativeRecord(
-                    other.relation.regime, other.relation.name, isolation.solved, operands
+                    _uses(other),
+                    other.relation.name,
+                    isolation.solved,
+                    self._operands(other, other.relation.symbols, unknown),
+                    integrals,
                 )
+
+    def _excludes(self, other: Instance, source: Instance) -> bool:
+        """Whether a relation holds only in other regimes, all of which the sheet tests."""
+        own = dict(source.regimes)
+        differs = any(own.get(v, outcome) != outcome for v, outcome in other.regimes)
+        return differs and all(v in self.where for v, _ in other.regimes)
+
+    def _integrals_of(self, source: Instance, solved: Expr) -> tuple[IntegralRecord, ...] | None:
+        """The integrals of another solved form; ``None`` if one has no value as things are."""
+        values = self._values(source, source.relation.symbols)
+        try:
+            return self._tables(source, tables_of(solved, values))
+        except (UntabulatedIntegral, OutsideDomainError):
+            return None
+
+
+def _uses(source: Instance) -> tuple[RegimeUse, ...]:
+    return tuple(RegimeUse(str(variable), outcome) for variable, outcome in source.regimes)
 
 
 def _move(move: Move) -> MoveRecord:
     return MoveRecord(move.action, move.operand, move.result)
 
 
+def _halving(row: Halving) -> HalvingRecord:
+    return HalvingRecord(row.low, row.high, row.residual, tuple(map(sum_record, row.tables)))
+
+
 def _root(root: OtherRoot) -> RootRecord:
     return RootRecord(midpoint(root.value), root.reason)
-
-
-def certified_digits(lower: str, upper: str) -> int:
-    """Return to how many significant digits two bounds agree when rounded, at most 15."""
-    for digits in range(_MOST_DIGITS, 0, -1):
-        context = Context(prec=digits, rounding=ROUND_HALF_EVEN)
-        if context.create_decimal(lower) == context.create_decimal(upper):
-            return digits
-    return 0

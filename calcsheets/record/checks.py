@@ -35,11 +35,10 @@ def consistency_checks(outcome: Outcome) -> Iterator[ConsistencyRecord]:
     }
     for instance in outcome.problem.instances:
         variables = tuple(dict.fromkeys(instance.binding.values()))
-        regime = instance.regime_variable
         if (
             instance.key in used
             or not all(variable in outcome.values for variable in variables)
-            or (regime is not None and outcome.regimes.get(regime) != instance.relation.regime)
+            or any(outcome.regimes.get(v) != regime for v, regime in instance.regimes)
             or not _applies(outcome, instance)
         ):
             continue

@@ -7,7 +7,7 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 
-from ..expressions import Condition, Equation, Expr, Symbol
+from ..expressions import Condition, Equation, Expr, Integral, Symbol
 
 
 @dataclass(frozen=True)
@@ -72,6 +72,73 @@ class RootRecord:
 
 
 @dataclass(frozen=True)
+class NodeRecord:
+    """One place at which an integrand is taken.
+
+    Attributes:
+        place: share of the way from the lower to the upper limit.
+        weight: its weight; all weights together are one.
+        at: the variable there.
+        height: the integrand there.
+    """
+
+    place: float
+    weight: float
+    at: float
+    height: float
+
+
+@dataclass(frozen=True)
+class IntegralRecord:
+    """An integral of a step, with the sum that a workbook makes of it.
+
+    Attributes:
+        integral: the integral.
+        low: value of its lower limit.
+        high: value of its upper limit.
+        nodes: the places of the sum, in order.
+        total: the sum: width times the weighted heights.
+        lower: decimal below which the exact integral cannot lie.
+        upper: decimal above which it cannot lie.
+        certified_digits: significant digits that these certify, at most 15.
+        difference: bound on the difference of the sum from the exact integral.
+        limit_error: bound on the error of a limit, or of the variable at a place, in doubles.
+        height_error: bound on the error of the integrand at a place in doubles.
+        total_error: bound on the error of the sum in doubles.
+    """
+
+    integral: Integral
+    low: float
+    high: float
+    nodes: tuple[NodeRecord, ...]
+    total: float
+    lower: str
+    upper: str
+    certified_digits: int
+    difference: float
+    limit_error: float
+    height_error: float
+    total_error: float
+
+
+@dataclass(frozen=True)
+class SumRecord:
+    """The same sum at another value of the unknown.
+
+    Attributes:
+        low: value of the lower limit.
+        high: value of the upper limit.
+        heights: the integrand at each place.
+        total: the sum.
+    """
+
+    low: float
+    high: float
+    heights: tuple[float, ...]
+    total: float
+
+
+@dataclass(frozen=True)
 class HalvingRecord:
     """One row of the bisection that leads to a root.
 
@@ -79,11 +146,21 @@ class HalvingRecord:
         low: lower end of the interval.
         high: upper end.
         residual: difference of both sides at the middle, over the sum of their magnitudes.
+        integrals: each integral of the step at the middle.
     """
 
     low: float
     high: float
     residual: float
+    integrals: tuple[SumRecord, ...]
+
+
+@dataclass(frozen=True)
+class RegimeUse:
+    """A regime in which a step holds: the key of the regime and its outcome."""
+
+    key: str
+    outcome: str
 
 
 @dataclass(frozen=True)
@@ -91,16 +168,18 @@ class AlternativeRecord:
     """What gives the same quantity in the other regime, for a workbook that stays alive.
 
     Attributes:
-        regime: the regime.
+        regimes: the regimes in which it holds.
         relation: name of the relation.
         solved: its solved form.
         operands: its known quantities.
+        integrals: the integrals of the solved form.
     """
 
-    regime: str
+    regimes: tuple[RegimeUse, ...]
     relation: str
     solved: Expr
     operands: tuple[Operand, ...]
+    integrals: tuple[IntegralRecord, ...]
 
 
 @dataclass(frozen=True)
@@ -124,14 +203,6 @@ class RegimeTest:
     when_false: str
     outcome: str
     assumed: bool
-
-
-@dataclass(frozen=True)
-class RegimeUse:
-    """A regime in which a step holds: the key of the regime and its outcome."""
-
-    key: str
-    outcome: str
 
 
 @dataclass(frozen=True)
@@ -185,6 +256,8 @@ class StepRecord:
         bracket: interval in which the root is the only one, empty for closed forms.
         other_roots: roots not taken.
         halvings: the course of a bisection in the bracket, empty for closed forms.
+        integrals: the integrals of the solved form, or of the published one for a root.
+        start_integrals: for a root the same at the lower end of the first interval.
         regimes: the regimes in which the relation holds, empty for all.
         alternatives: the same quantity in other regimes.
         test: the regime test; ``None`` for a relation.
@@ -214,6 +287,8 @@ class StepRecord:
     bracket: tuple[float, ...]
     other_roots: tuple[RootRecord, ...]
     halvings: tuple[HalvingRecord, ...]
+    integrals: tuple[IntegralRecord, ...]
+    start_integrals: tuple[SumRecord, ...]
     regimes: tuple[RegimeUse, ...]
     alternatives: tuple[AlternativeRecord, ...]
     test: RegimeTest | None

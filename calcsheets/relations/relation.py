@@ -84,6 +84,7 @@ class Relation:
         cautions: where someone can get hurt.
         regime: outcome of the regime test in which it holds; empty for all.
         regime_role: role of the process whose regime it is; empty for its own.
+        also: other regimes that must be as well: role of the process, and outcome.
         branches: ranges that part its roots.
         errs: in which direction it errs outside its assumptions, as a sentence.
         empirical: whether it rests on measurement and not on the model alone.
@@ -100,6 +101,7 @@ class Relation:
     cautions: tuple[str, ...] = ()
     regime: str = ""
     regime_role: str = ""
+    also: tuple[tuple[str, str], ...] = ()
     branches: tuple[Branch, ...] = ()
     errs: str = ""
     empirical: bool = False

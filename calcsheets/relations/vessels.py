@@ -1,13 +1,27 @@
-"""Vessels: the gas held, let-down and filling through an orifice that stays choked."""
+"""Vessels: the gas held, and its change by let-down and filling through an orifice."""
 
 from __future__ import annotations
 
-from ..expressions import ln, sqrt, symbols
+from ..expressions import symbols
 from .orifices import CRITICAL_RATIO
 from .relation import Chapter, Process, Regime, Relation
 from .roles import DISCHARGE, INLET, OUTLET, SUPPLY, THROUGH
 from .sources import definition, derived, naca_1135, textbook
 from .thermodynamics import CONSTANT_HEATS, PERFECT
+from .vessel_changes import (
+    CHOKED_THROUGHOUT,
+    COLD,
+    FILLING_ADIABATIC,
+    FILLING_ISOTHERMAL,
+    FILLINGS,
+    HOT,
+    LET_DOWN_ADIABATIC,
+    LET_DOWN_ISOTHERMAL,
+    LET_DOWNS,
+    UNCHOKED_AT_THE_END,
+    UNIFORM,
+)
+from .vessel_times import FILLING_TIMES, LET_DOWN_TIMES
 
 gamma, R, M_w, t, dm = symbols("gamma R M_w t dm")
 p, T, p_0, T_0, V, m, N = symbols("p T p_0 T_0 V m N")
@@ -16,26 +30,6 @@ p_2, T_2, V_2, m_2 = (s.of(OUTLET) for s in symbols("p_0 T_0 V m"))
 A, C_d, mdot = (s.of(THROUGH) for s in symbols("A C_d mdot"))
 p_back = symbols("p")[0].of(DISCHARGE)
 p_s, T_s = (s.of(SUPPLY) for s in symbols("p_0 T_0"))
-
-LET_DOWN_ISOTHERMAL = "let-down, isothermal"
-LET_DOWN_ADIABATIC = "let-down, adiabatic"
-FILLING_ISOTHERMAL = "filling, isothermal"
-FILLING_ADIABATIC = "filling, adiabatic"
-_LET_DOWNS = (LET_DOWN_ISOTHERMAL, LET_DOWN_ADIABATIC)
-_FILLINGS = (FILLING_ISOTHERMAL, FILLING_ADIABATIC)
-CHOKED_THROUGHOUT = "choked throughout"
-UNCHOKED_AT_THE_END = "unchoked before the end"
-UNCHOKED_AT_THE_START = "unchoked from the start or before the end"
-
-_UNIFORM = "the gas in the vessel is uniform and at rest"
-_LET_DOWN_ASSUMPTIONS = (PERFECT, CONSTANT_HEATS, _UNIFORM, "constant discharge coefficient")
-_COLD = (
-    "A let-down cools the gas and the wall: check the vessel and pipe metal against its "
-    "minimum design temperature, and the gas for condensation and hydrates.",
-)
-_HOT = (
-    "Filling heats the gas; in oxygen service fast filling can ignite materials by compression.",
-)
 
 CHAPTER = Chapter(
     "vessels",
@@ -47,7 +41,7 @@ CHAPTER = Chapter(
             (p_0 * V).equals(m * R * T_0),
             textbook("Perfect-gas equation of state"),
             ("vessel",),
-            assumptions=(PERFECT, _UNIFORM),
+            assumptions=(PERFECT, UNIFORM),
         ),
         Relation(
             "pressure_at_rest",
@@ -55,7 +49,7 @@ CHAPTER = Chapter(
             p.equals(p_0),
             definition("Definition of the stagnation state"),
             ("vessel",),
-            assumptions=(_UNIFORM,),
+            assumptions=(UNIFORM,),
         ),
         Relation(
             "temperature_at_rest",
@@ -63,7 +57,7 @@ CHAPTER = Chapter(
             T.equals(T_0),
             definition("Definition of the stagnation state"),
             ("vessel",),
-            assumptions=(_UNIFORM,),
+            assumptions=(UNIFORM,),
         ),
         Relation(
             "amount_held",
@@ -77,7 +71,7 @@ CHAPTER = Chapter(
             "Rigid vessel: one volume",
             V_2.equals(V_1),
             textbook("Rigid walls"),
-            (*_LET_DOWNS, *_FILLINGS),
+            (*LET_DOWNS, *FILLINGS),
             assumptions=("the vessel keeps its volume",),
         ),
         Relation(
@@ -85,7 +79,7 @@ CHAPTER = Chapter(
             "Mass discharged",
             dm.equals(m_1 - m_2),
             textbook("Conservation of mass"),
-            _LET_DOWNS,
+            LET_DOWNS,
         ),
         Relation(
             "isothermal_vessel",
@@ -107,51 +101,15 @@ CHAPTER = Chapter(
                 CONSTANT_HEATS,
                 "no heat from the walls, so that the remaining gas expands isentropically",
             ),
-            cautions=_COLD,
+            cautions=COLD,
             errs="Heat from the walls is left out: the real gas stays warmer than this.",
-        ),
-        Relation(
-            "let_down_time_isothermal",
-            "Time of a choked let-down at constant temperature",
-            t.equals(
-                V_1 / (C_d * A * sqrt(gamma * R * T_1))
-                * ((gamma + 1) / 2) ** ((gamma + 1) / (2 * (gamma - 1)))
-                * ln(p_1 / p_2)
-            ),
-            derived("Mass balance of the vessel with choked mass flow at constant temperature"),
-            (LET_DOWN_ISOTHERMAL,),
-            regime=CHOKED_THROUGHOUT,
-            assumptions=_LET_DOWN_ASSUMPTIONS,
-        ),
-        Relation(
-            "let_down_time_adiabatic",
-            "Time of a choked let-down without heat exchange",
-            t.equals(
-                2 * V_1 / ((gamma - 1) * C_d * A * sqrt(gamma * R * T_1))
-                * ((gamma + 1) / 2) ** ((gamma + 1) / (2 * (gamma - 1)))
-                * ((p_1 / p_2) ** ((gamma - 1) / (2 * gamma)) - 1)
-            ),
-            derived("Mass balance of the vessel with choked mass flow and isentropic expansion"),
-            (LET_DOWN_ADIABATIC,),
-            regime=CHOKED_THROUGHOUT,
-            assumptions=_LET_DOWN_ASSUMPTIONS,
-            cautions=_COLD,
         ),
         Relation(
             "mass_filled",
             "Mass filled",
             dm.equals(m_2 - m_1),
             textbook("Conservation of mass"),
-            _FILLINGS,
-        ),
-        Relation(
-            "filling_steady_mass",
-            "Mass filled at constant mass flow",
-            dm.equals(mdot * t),
-            textbook("Conservation of mass with constant choked mass flow"),
-            _FILLINGS,
-            regime=CHOKED_THROUGHOUT,
-            assumptions=("constant supply state",),
+            FILLINGS,
         ),
         Relation(
             "filling_energy",
@@ -159,9 +117,11 @@ CHAPTER = Chapter(
             (V_1 * (p_2 - p_1)).equals(gamma * R * T_s * dm),
             derived("First law for the vessel: internal energy gained is enthalpy supplied"),
             (FILLING_ADIABATIC,),
-            assumptions=(PERFECT, CONSTANT_HEATS, _UNIFORM, "no heat to the walls"),
-            cautions=_HOT,
+            assumptions=(PERFECT, CONSTANT_HEATS, UNIFORM, "no heat to the walls"),
+            cautions=HOT,
         ),
+        *LET_DOWN_TIMES,
+        *FILLING_TIMES,
     ),
     regimes=(
         Regime(
@@ -170,7 +130,7 @@ CHAPTER = Chapter(
             (p_back / p_2).at_most(CRITICAL_RATIO),
             CHOKED_THROUGHOUT,
             UNCHOKED_AT_THE_END,
-            _LET_DOWNS,
+            LET_DOWNS,
             naca_1135(),
         ),
         Regime(
@@ -178,8 +138,8 @@ CHAPTER = Chapter(
             "Choking until the end of the filling",
             (p_2 / p_s).at_most(CRITICAL_RATIO),
             CHOKED_THROUGHOUT,
-            UNCHOKED_AT_THE_START,
-            _FILLINGS,
+            UNCHOKED_AT_THE_END,
+            FILLINGS,
             naca_1135(),
         ),
     ),

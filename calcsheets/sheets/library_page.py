@@ -6,6 +6,7 @@ from collections.abc import Iterator
 
 from ..expressions import Symbol
 from ..relations import Chapter, Relation, load_library
+from ..relations.roles import ROLE_TITLES
 from .typesetting import plain_text, symbol_text, unit_text
 
 
@@ -60,8 +61,10 @@ def _relation(relation: Relation) -> Iterator[str]:
     yield f"- name: `{relation.name}`"
     yield f"- quantities: {'; '.join(_symbol(symbol) for symbol in relation.symbols)}"
     yield f"- offered by: {', '.join(relation.offered_by)}"
-    if relation.regime:
-        yield f"- regime: {relation.regime}"
+    regimes = [relation.regime] if relation.regime else []
+    regimes += [f"{outcome} {ROLE_TITLES[role]}" for role, outcome in relation.also]
+    if regimes:
+        yield f"- regime: {'; '.join(regimes)}"
     yield f"- source: {relation.source}; known: {relation.source.known}"
     for limit in relation.limits:
         yield f"- limit: {plain_text(limit.condition)}: {limit.reason}"

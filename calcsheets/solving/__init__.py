@@ -10,9 +10,10 @@ from .balls import (
     midpoint,
     working_precision,
 )
-from .bisection import HALVINGS, Halving
-from .doubles import double_errors
+from .bisection import HALVINGS, Bisection, Halving
+from .doubles import Doubles, TableErrors, in_doubles
 from .moves import ACTIONS, Isolation, Move, isolate, occurrences
+from .quadrature import Table, tables_of
 from .run import Outcome, RegimeOutcome, StepOutcome, solve_problem
 from .solve import (
     OtherRoot,
@@ -29,6 +30,8 @@ __all__ = [
     "HALVINGS",
     "PRECISION",
     "Ball",
+    "Bisection",
+    "Doubles",
     "Halving",
     "Isolation",
     "Move",
@@ -39,11 +42,13 @@ __all__ = [
     "RegimeOutcome",
     "Solution",
     "StepOutcome",
+    "Table",
+    "TableErrors",
     "compare",
     "decimal_bounds",
-    "double_errors",
     "evaluate",
     "exact_ball",
+    "in_doubles",
     "isolate",
     "midpoint",
     "occurrences",
@@ -51,5 +56,6 @@ __all__ = [
     "size_of",
     "solve",
     "solve_problem",
+    "tables_of",
     "working_precision",
 ]

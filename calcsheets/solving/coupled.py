@@ -9,7 +9,16 @@ from itertools import pairwise
 
 from flint import arb
 
-from ..expressions import Condition, Equation, Expr, Number, Symbol, substitute, symbols_in
+from ..expressions import (
+    Condition,
+    Equation,
+    Expr,
+    Number,
+    Symbol,
+    integrals_in,
+    substitute,
+    symbols_in,
+)
 from ..planning import Edge, Instance, Loop, Member, Place, Problem
 from ..quantities import Variable, catalogue
 from ..relations import Branch, Limit, Relation, Source
@@ -121,8 +130,8 @@ def _closed_form(edge: Edge) -> _Derived | None:
     if not isinstance(edge.source, Instance) or edge.unknown is None:
         return None
     isolation = isolate(edge.source.relation.published, edge.unknown)
-    if isolation is None:
-        return None
+    if isolation is None or any(integrals_in(isolation.solved)):
+        return None  # an integral must not come to stand within another
     return _Derived(edge.target, edge.source, edge.unknown, isolation.solved)
 
 

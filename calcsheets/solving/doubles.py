@@ -7,13 +7,15 @@ with the condition of every step.
 from __future__ import annotations
 
 from collections.abc import Mapping
+from dataclasses import dataclass
 
 from flint import arb, ctx
 
-from ..expressions import derivative
+from ..expressions import Symbol, derivative
 from ..planning import Instance
 from ..quantities import Variable
 from .balls import Ball, OutsideDomainError, evaluate, exact_ball
+from .quadrature import Table, widest_of
 from .run import Outcome, StepOutcome
 
 _DOUBLE_BITS = 53
@@ -21,15 +23,51 @@ _NOTHING_LEFT = 1e280
 _ROUNDINGS_OF_A_FUNCTION = 4  # engines round powers and logarithms less well than one operation
 
 
-def double_errors(outcome: Outcome) -> Mapping[Variable, float]:
-    """Return a bound on the absolute error of each step in double arithmetic.
+@dataclass(frozen=True)
+class Doubles:
+    """Every known variable in double arithmetic.
 
-    Args:
-        outcome: a solved problem.
-
-    Returns:
-        The bound by variable, in coherent SI; 1e280 where double arithmetic leaves nothing.
+    Attributes:
+        balls: each variable with what rounding leaves of it.
+        errors: bound on the absolute error of each step, in coherent SI; 1e280 where double
+            arithmetic leaves nothing.
     """
+
+    balls: Mapping[Variable, Ball]
+    errors: Mapping[Variable, float]
+
+    def of_table(self, table: Table, bound: Mapping[Symbol, Variable]) -> TableErrors:
+        """Return bounds on the errors of a sum.
+
+        Args:
+            table: the sum.
+            bound: the variable of each symbol.
+        """
+        values = {symbol: self.balls[v] for symbol, v in bound.items() if v in self.balls}
+        with ctx.workprec(_DOUBLE_BITS):
+            try:
+                return TableErrors(*(_bound(ball) for ball in widest_of(table, values)))
+            except OutsideDomainError:
+                return TableErrors(_NOTHING_LEFT, _NOTHING_LEFT, _NOTHING_LEFT)
+
+
+@dataclass(frozen=True)
+class TableErrors:
+    """Bounds on the absolute errors of a sum in double arithmetic.
+
+    Attributes:
+        limits: of its limits and of the variable at each place.
+        heights: of the integrand at each place.
+        total: of the sum.
+    """
+
+    limits: float
+    heights: float
+    total: float
+
+
+def in_doubles(outcome: Outcome) -> Doubles:
+    """Return what double precision leaves of each variable of a solved problem."""
     balls: dict[Variable, Ball] = {}
     errors: dict[Variable, float] = {}
     with ctx.workprec(_DOUBLE_BITS):
@@ -41,9 +79,13 @@ def double_errors(outcome: Outcome) -> Mapping[Variable, float]:
                 continue
             ball = _in_doubles(step, step.edge.source, balls)
             balls[step.edge.target] = ball
-            radius = float(ball.rad()) if ball.is_finite() else _NOTHING_LEFT
-            errors[step.edge.target] = min(_ROUNDINGS_OF_A_FUNCTION * radius, _NOTHING_LEFT)
-    return errors
+            errors[step.edge.target] = _bound(ball)
+    return Doubles(balls, errors)
+
+
+def _bound(ball: Ball) -> float:
+    radius = float(ball.rad()) if ball.is_finite() else _NOTHING_LEFT
+    return min(_ROUNDINGS_OF_A_FUNCTION * radius, _NOTHING_LEFT)
 
 
 def _in_doubles(step: StepOutcome, source: Instance, balls: Mapping[Variable, Ball]) -> Ball:

@@ -13,11 +13,12 @@ from ..errors import NoRoot, SeveralRoots, UndecidedRoots
 from ..expressions import Condition, Expr, Function, Number, Sum, Symbol, derivative, symbols_in
 from ..relations import Relation
 from .balls import Ball, OutsideDomainError, evaluate, exact_ball, midpoint
-from .bisection import Halving, halvings
+from .bisection import Bisection, Search
 from .bound import BALLS, bind
 from .logarithms import logarithm_of
 from .moves import Move, isolate
 from .polynomials import polynomial_form
+from .quadrature import Table, tables_of
 from .roots import TooManyCellsError, isolate_roots
 from .taylor import taylor_form
 
@@ -53,7 +54,8 @@ class Solution:
         branch: name of the branch on which the value lies, empty where there is one root.
         bracket: interval in which the root is the only one; ``None`` for closed forms.
         other_roots: roots that were not taken.
-        halvings: the course of a bisection in the bracket, empty for closed forms.
+        bisection: the course of a bisection in the bracket; ``None`` for closed forms.
+        tables: the integrals of the solved form, or of the published one, as sums.
     """
 
     value: Ball
@@ -64,7 +66,8 @@ class Solution:
     branch: str
     bracket: tuple[Fraction, Fraction] | None
     other_roots: tuple[OtherRoot, ...]
-    halvings: tuple[Halving, ...]
+    bisection: Bisection | None
+    tables: tuple[Table, ...]
 
 
 @dataclass(frozen=True)
@@ -165,32 +168,25 @@ def _solution(
     value: Ball,
     others: tuple[OtherRoot, ...] = (),
 ) -> Solution:
-    bracket = _bracket(question, value, others) if method == "root" else None
+    published, values = question.relation.published, {**question.values, question.unknown: value}
+    tables = tables_of(solved or published.left - published.right, values)
+    branch = _branch_at(question, value)
+    bisection = None
+    if method == "root":
+        search = Search(published, question.unknown, question.values, tables)
+        bisection = search.bisection(_bracket(question, value, others))
     return Solution(
         value=value,
         method=method,
         moves=moves,
         solved=solved,
-        residual=residual_of(question.relation, {**question.values, question.unknown: value}),
-        branch=_branch_at(question, value),
-        bracket=bounds_of(replace(question, branch=_branch_at(question, value)))
-        if method == "root"
-        else None,
+        residual=residual_of(question.relation, values),
+        branch=branch,
+        bracket=bounds_of(replace(question, branch=branch)) if method == "root" else None,
         other_roots=others,
-        halvings=() if bracket is None else halvings(_residual_function(question), bracket),
+        bisection=bisection,
+        tables=tables,
     )
-
-
-def _residual_function(question: Question) -> Callable[[Ball], Ball]:
-    """Difference of both sides over the sum of their magnitudes, as a function of the unknown."""
-    published = question.relation.published
-
-    def residual(at: Ball) -> Ball:
-        values = {**question.values, question.unknown: at}
-        left, right = evaluate(published.left, values), evaluate(published.right, values)
-        return (left - right) / (abs(left) + abs(right))
-
-    return residual
 
 
 def _bracket(

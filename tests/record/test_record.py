@@ -16,7 +16,7 @@ import rfc8785
 import calcsheets
 from calcsheets.errors import DefinitionError
 from calcsheets.record import CriterionRecord, Record, read_record, record_bytes
-from calcsheets.record.build_steps import certified_digits
+from calcsheets.record.digits import certified_digits
 from tests.conftest import EXAMPLES, ROOT
 
 LETDOWN = ROOT / "examples" / "receiver-letdown.toml"

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 import random
 from collections.abc import Callable
 from fractions import Fraction
@@ -10,9 +11,10 @@ from typing import Any
 import pytest
 from flint import arb, ctx
 from mpmath import mp, mpf
+from numpy.polynomial.legendre import leggauss
 
 from calcsheets.checking.decimals import evaluate_decimal
-from calcsheets.errors import NoRoot
+from calcsheets.errors import NoRoot, UntabulatedIntegral
 from calcsheets.expressions import (
     Expr,
     Function,
@@ -30,15 +32,17 @@ from calcsheets.solving import (
     Ball,
     OutsideDomainError,
     Question,
+    Table,
     evaluate,
     exact_ball,
     midpoint,
     solve,
+    tables_of,
     working_precision,
 )
 
 M, gamma, n, x, w = symbols("M gamma n x w")
-ZERO, HALF, ONE, TWO = number("0"), number("0.5"), number("1"), number("2")
+ZERO, TENTH, HALF, ONE, TWO = map(number, ("0", "0.1", "0.5", "1", "2"))
 
 
 def ball(expr: Expr, values: dict[Symbol, Ball] | None = None) -> Ball:
@@ -155,12 +159,12 @@ def test_a_relation_with_an_integral_answers_for_each_of_its_quantities(unknown:
 
 
 def test_an_unknown_outside_the_integral_is_isolated_by_moves() -> None:
-    scaled = relation(w * Integral(M**gamma, M, ZERO, x))
+    scaled = relation(w * Integral(M**gamma, M, TENTH, x))
     with working_precision():
         known = {n: arb("0.05"), gamma: arb("1.5"), x: arb("0.5")}
         solution = solve(Question(scaled, w, known, "", "w", "a place"))
     assert [move.action for move in solution.moves] == ["exchange sides", "divide by"]
-    assert midpoint(solution.value) == pytest.approx(0.05 * 2.5 / 0.5**2.5, rel=1e-14)
+    assert midpoint(solution.value) == pytest.approx(0.05 * 2.5 / (0.5**2.5 - 0.1**2.5), rel=1e-14)
 
 
 def test_planning_knows_that_an_unknown_in_an_integral_is_no_closed_form() -> None:
@@ -176,3 +180,58 @@ def test_a_value_that_the_integral_does_not_reach_is_refused_with_its_range() ->
             solve(question(w, known))
     assert caught.value.asked == "100"
     assert "to" in caught.value.reached
+
+
+SMOOTH: dict[Symbol, Ball] = {gamma: arb("1.4"), x: arb("0.05"), w: arb("0.4")}
+
+
+class TestTables:
+    """A workbook carries an integral as a sum over places."""
+
+    smooth = Integral((1 - M**2) ** (-gamma / (gamma - 1)), M, x, w)
+
+    def table(self) -> Table:
+        with working_precision():
+            (found,) = tables_of(2 * self.smooth + self.smooth, SMOOTH)
+        return found
+
+    def test_the_places_are_those_of_gauss_and_legendre(self) -> None:
+        """numpy.polynomial.legendre.leggauss (library)."""
+        places, weights = leggauss(16)
+        assert self.table().places == pytest.approx((1 + places) / 2, rel=1e-14)
+        assert self.table().weights == pytest.approx(weights / 2, rel=1e-13)
+
+    def test_the_sum_is_that_of_its_numbers_and_comes_near_the_integral(self) -> None:
+        table = self.table()
+        assert (table.low, table.high) == (0.05, 0.4)
+        heights = [(1 - y**2) ** -3.5 for y in table.at]
+        assert table.heights == pytest.approx(heights, rel=1e-14)
+        total = 0.35 * math.fsum(a * b for a, b in zip(table.weights, heights, strict=True))
+        assert table.total == pytest.approx(total, rel=1e-14)
+        assert table.total == pytest.approx(midpoint(ball(self.smooth, SMOOTH)), rel=1e-15)
+
+    def test_a_sharper_integrand_gets_more_parts(self) -> None:
+        with working_precision():
+            (table,) = tables_of(Integral(1 / M, M, TENTH, ONE), {})
+        assert len(table.places) == 64
+        assert list(table.places) == sorted(table.places)
+        assert math.fsum(table.weights) == pytest.approx(1, rel=1e-15)
+        assert table.total == pytest.approx(math.log(10), rel=1e-14)
+
+    def test_what_no_sum_comes_near_is_refused(self) -> None:
+        with working_precision(), pytest.raises(UntabulatedIntegral) as caught:
+            tables_of(Integral(sqrt(M), M, ZERO, ONE), {})
+        assert (caught.value.variable, caught.value.places) == ("M", 128)
+
+    def test_each_row_of_a_bisection_has_its_own_sum(self) -> None:
+        with working_precision():
+            known = {n: arb("0.6"), gamma: arb("1.4"), x: arb("0.25")}
+            solution = solve(question(w, known))
+        assert solution.bisection is not None
+        (start,), rows = solution.bisection.start, solution.bisection.rows
+        assert start.high == rows[0].low and start.low == 0.25
+        for row in rows:
+            (table,) = row.tables
+            assert table.high == (row.low + row.high) / 2
+            residual = (0.6 - 1.4 * table.total) / (0.6 + 1.4 * table.total)
+            assert row.residual == pytest.approx(residual, abs=1e-15)

@@ -29,6 +29,7 @@ def quantities() -> Iterator[Quantity]:
     yield quantity("A", "cross-sectional area", n("A"), dim.AREA, "m2", high="1e6")
     yield quantity("d", "diameter", n("d"), dim.LENGTH, "m", high="1e4")
     yield quantity("C_d", "discharge coefficient", n("C", "d"), dim.ONE, "1", high="1.2")
+    yield quantity("y", "velocity over maximum velocity", n("y"), dim.ONE, "1", high="1", zero=True)
     yield quantity("F", "force", n("F"), dim.FORCE, "N", low="-1e12")
     yield quantity("F_i", "impulse function", n("I"), dim.FORCE, "N")
     for state in REFERENCE_STATES:

@@ -9,8 +9,9 @@ from typing import Any
 
 from ...record import Record
 from .calculation import write_calculation
-from .cells import CALCULATION, INPUTS, RESULTS, ROOTS, place_cells
+from .cells import CALCULATION, INPUTS, INTEGRALS, RESULTS, ROOTS, place_cells
 from .inputs import write_inputs
+from .integrals import has_integrals, integral_cells, write_integrals
 from .page import FormulaCell, Page, make_styles
 from .results import write_results
 from .roots import root_cells, root_steps, write_roots
@@ -52,6 +53,7 @@ def make_workbook(record: Record, paper: str = "A4") -> Workbook:
         styles = make_styles(book)
         names = ["Cover", RESULTS, INPUTS, "Assumptions", CALCULATION]
         names += [ROOTS] if root_steps(record) else []
+        names += [INTEGRALS] if has_integrals(record) else []
         names += ["References"]
         pages = {name: Page(book, styles, name, record, paper) for name in names}
         cells = place_cells(record)
@@ -59,9 +61,12 @@ def make_workbook(record: Record, paper: str = "A4") -> Workbook:
         write_results(pages[RESULTS], record, cells)
         write_inputs(pages[INPUTS], record, book)
         write_assumptions(pages["Assumptions"], record)
-        write_calculation(pages[CALCULATION], record, cells, root_cells(record))
+        integrals = integral_cells(record)
+        write_calculation(pages[CALCULATION], record, cells, root_cells(record), integrals.closed)
         if ROOTS in pages:
-            write_roots(pages[ROOTS], record, cells)
+            write_roots(pages[ROOTS], record, cells, integrals.trials)
+        if INTEGRALS in pages:
+            write_integrals(pages[INTEGRALS], record, cells)
         write_references(pages["References"], record)
     formulas = tuple(cell for page in pages.values() for cell in page.formulas)
     return Workbook(buffer.getvalue(), formulas)

@@ -2,10 +2,10 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Set
+from collections.abc import Mapping, Sequence, Set
 
-from ...expressions import Condition, Equation, Symbol
-from ...record import LimitRecord, Record, StepRecord
+from ...expressions import Condition, Equation, Expr, Integral, Symbol
+from ...record import LimitRecord, Operand, Record, RegimeUse, StepRecord
 from ..typesetting import plain_text, symbol_text, unit_text
 from .cells import CALCULATION, FIRST_ROW, STEP_VALUE, Cells, reference
 from .formula import comparison, formula
@@ -29,7 +29,12 @@ _WITHIN, _ISSUED, CHANGE = 9, 10, 11
 ROOT_TEXT = "root on the sheet Roots"
 
 
-def write_calculation(page: Page, record: Record, cells: Cells, roots: Mapping[int, str]) -> None:
+Closed = Mapping[tuple[int, int], Mapping[Integral, str]]
+
+
+def write_calculation(
+    page: Page, record: Record, cells: Cells, roots: Mapping[int, str], integrals: Closed
+) -> None:
     """Write one row for each step.
 
     Args:
@@ -37,6 +42,7 @@ def write_calculation(page: Page, record: Record, cells: Cells, roots: Mapping[i
         record: the record.
         cells: where every quantity stands.
         roots: cell of the converged root, by number of its step.
+        integrals: cells of integrals, by number of the step and of its alternative, 0 for none.
     """
     page.table(
         "Calculation",
@@ -46,7 +52,12 @@ def write_calculation(page: Page, record: Record, cells: Cells, roots: Mapping[i
     )
     assumed = {step.key for step in record.steps if step.test and step.test.assumed}
     for index, step in enumerate(record.steps):
-        _row(page, FIRST_ROW + index, record, step, cells, roots, assumed)
+        value = (
+            _test_formula(step, cells)
+            if step.test
+            else _value_formula(step, cells, roots, integrals, assumed)
+        )
+        _row(page, FIRST_ROW + index, record, step, cells, value)
 
 
 def _row(
@@ -55,8 +66,7 @@ def _row(
     record: Record,
     step: StepRecord,
     cells: Cells,
-    roots: Mapping[int, str],
-    assumed: Set[str],
+    text: str,
 ) -> None:
     relation = record.relation(step.relation)
     page.number(row, 0, step.number)
@@ -72,23 +82,14 @@ def _row(
     value = reference(CALCULATION, row, STEP_VALUE)
     issued = reference(CALCULATION, row, _ISSUED)
     if step.test is not None:
-        page.formula(
-            row, STEP_VALUE, _test_formula(step, cells), step.test.outcome, page.styles.strong
-        )
+        page.formula(row, STEP_VALUE, text, step.test.outcome, page.styles.strong)
         page.text(row, _WITHIN, "")
         page.text(row, _ISSUED, step.test.outcome)
         page.changed(row, CHANGE, value, issued)
         return
     found = step.value or 0.0
     size = double_size(found, step.double_error)
-    page.formula(
-        row,
-        STEP_VALUE,
-        _value_formula(step, cells, roots, assumed),
-        found,
-        page.value_style(found),
-        size,
-    )
+    page.formula(row, STEP_VALUE, text, found, page.value_style(found), size)
     _write_limits(page, row, step, cells)
     page.value(row, _ISSUED, found)
     page.change(row, CHANGE, value, issued, size)
@@ -111,25 +112,37 @@ def _test_formula(step: StepRecord, cells: Cells) -> str:
 
 
 def _value_formula(
-    step: StepRecord, cells: Cells, roots: Mapping[int, str], assumed: Set[str]
+    step: StepRecord,
+    cells: Cells,
+    roots: Mapping[int, str],
+    integrals: Closed,
+    assumed: Set[str],
 ) -> str:
     """The live formula of a step.
 
     A regime that was assumed and confirmed afterwards follows from the step itself and cannot
     switch it without a circle; the results watch such a regime.
     """
-    text = (
-        roots[step.number] if step.solved is None else formula(step.solved, cells.of(step.operands))
-    )
-    for use in step.regimes:
-        if use.key not in cells.by_key or use.key in assumed:
-            continue
-        regime, other = cells.by_key[use.key], "NA()"
-        for alternative in step.alternatives:
-            value = formula(alternative.solved, cells.of(alternative.operands))
-            other = f'IF({regime}="{alternative.regime}",{value},{other})'
-        text = f'IF({regime}="{use.outcome}",{text},{other})'
-    return text
+
+    def closed(solved: Expr, operands: Sequence[Operand], number: int) -> str:
+        own = integrals.get((step.number, number), {})
+        return formula(solved, cells.of(operands), integrals=own)
+
+    def holds(uses: Sequence[RegimeUse]) -> str:
+        watched = [use for use in uses if use.key in cells.by_key and use.key not in assumed]
+        tests = [f'{cells.by_key[use.key]}="{use.outcome}"' for use in watched]
+        return f"AND({','.join(tests)})" if len(tests) > 1 else "".join(tests)
+
+    text = roots[step.number] if step.solved is None else closed(step.solved, step.operands, 0)
+    if not holds(step.regimes):
+        return text
+    taken = {use.key: use.outcome for use in step.regimes if use.key in assumed}
+    other = "NA()"
+    for number, alternative in enumerate(step.alternatives, start=1):
+        if all(taken.get(use.key, use.outcome) == use.outcome for use in alternative.regimes):
+            value = closed(alternative.solved, alternative.operands, number)
+            other = f"IF({holds(alternative.regimes)},{value},{other})"
+    return f"IF({holds(step.regimes)},{text},{other})"
 
 
 def _write_limits(page: Page, row: int, step: StepRecord, cells: Cells) -> None:

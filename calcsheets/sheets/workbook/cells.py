@@ -10,7 +10,8 @@ from xlsxwriter.utility import xl_rowcol_to_cell
 from ...expressions import Symbol
 from ...record import Operand, Record
 
-INPUTS, CALCULATION, RESULTS, ROOTS = "Inputs", "Calculation", "Results", "Roots"
+INPUTS, CALCULATION, RESULTS = "Inputs", "Calculation", "Results"
+ROOTS, INTEGRALS = "Roots", "Integrals"
 FIRST_ROW = 4
 INPUT_TYPED, INPUT_SI = 4, 6
 STEP_VALUE = 4

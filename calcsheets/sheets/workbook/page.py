@@ -137,14 +137,19 @@ class Page:
 
     def table(self, title: str, note: str, columns: Sequence[Column]) -> None:
         """Write title, note and the heading row of a table."""
-        self.sheet.write_string(0, 0, title, self.styles.title)
-        self.note(1, note)
+        self.heading(title, note, columns)
         self.sheet.set_row(FIRST_ROW - 1, 2 * _LINE_HEIGHT + 2)
         for index, column in enumerate(columns):
-            self.width(index, column.width)
             self.sheet.write_string(FIRST_ROW - 1, index, column.heading, self.styles.heading)
         self.sheet.freeze_panes(FIRST_ROW, 2)
         self.sheet.repeat_rows(FIRST_ROW - 1)
+
+    def heading(self, title: str, note: str, columns: Sequence[Column]) -> None:
+        """Write title and note, and set the widths of columns."""
+        self.sheet.write_string(0, 0, title, self.styles.title)
+        self.note(1, note)
+        for index, column in enumerate(columns):
+            self.width(index, column.width)
 
     def note(self, row: int, text: str) -> None:
         """Write a line of text across the sheet."""

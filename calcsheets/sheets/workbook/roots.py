@@ -2,7 +2,9 @@
 
 from __future__ import annotations
 
-from ...expressions import Equation
+from collections.abc import Mapping, Sequence
+
+from ...expressions import Equation, Integral
 from ...record import Record, StepRecord
 from ..typesetting import plain_text, symbol_text
 from .cells import FIRST_ROW, ROOTS, Cells, reference
@@ -20,6 +22,8 @@ _COLUMNS = (
 _LOW, _HIGH, _MIDDLE, _RESIDUAL, _SIGN = range(1, 6)
 _GAP = 3
 
+Trials = Mapping[int, Sequence[Mapping[Integral, str]]]
+
 
 def root_steps(record: Record) -> tuple[StepRecord, ...]:
     """Return the steps whose value is a root."""
@@ -34,8 +38,26 @@ def root_cells(record: Record) -> dict[int, str]:
     }
 
 
-def write_roots(page: Page, record: Record, cells: Cells) -> None:
-    """Write the rows of every root."""
+def lower_end(record: Record, step: StepRecord) -> str:
+    """Return the cell of the lower end of a root's first interval."""
+    return reference(ROOTS, _first_row(record, step), _LOW)
+
+
+def middle_of(record: Record, step: StepRecord, row: int) -> str:
+    """Return the cell of the middle of one of a root's intervals."""
+    return reference(ROOTS, _first_row(record, step) + row, _MIDDLE)
+
+
+def write_roots(page: Page, record: Record, cells: Cells, trials: Trials) -> None:
+    """Write the rows of every root.
+
+    Args:
+        page: the sheet.
+        record: the record.
+        cells: where every quantity stands.
+        trials: by number of a step the cells of its integrals, at the lower end of the first
+            interval and then at the middle of each.
+    """
     page.table(
         "Roots",
         "The interval is halved so that the sides change order inside it. "
@@ -43,7 +65,7 @@ def write_roots(page: Page, record: Record, cells: Cells) -> None:
         _COLUMNS,
     )
     for step, first in _first_rows(record):
-        _write_root(page, first, record, step, cells)
+        _write_root(page, first, record, step, cells, trials.get(step.number, ()))
 
 
 def _first_rows(record: Record) -> list[tuple[StepRecord, int]]:
@@ -55,7 +77,18 @@ def _first_rows(record: Record) -> list[tuple[StepRecord, int]]:
     return found
 
 
-def _write_root(page: Page, first: int, record: Record, step: StepRecord, cells: Cells) -> None:
+def _first_row(record: Record, step: StepRecord) -> int:
+    return next(row for other, row in _first_rows(record) if other.number == step.number)
+
+
+def _write_root(
+    page: Page,
+    first: int,
+    record: Record,
+    step: StepRecord,
+    cells: Cells,
+    trials: Sequence[Mapping[Integral, str]],
+) -> None:
     published = record.relation(step.relation).published
     if not isinstance(published, Equation):
         raise ValueError(f"step {step.number} has no equation")
@@ -64,9 +97,12 @@ def _write_root(page: Page, first: int, record: Record, step: StepRecord, cells:
     page.note(first - 1, title)
     operands = cells.of(step.operands)
 
-    def residual(at: str) -> str:
+    def residual(at: str, trial: int) -> str:
         known = {**operands, step.symbol: at}
-        left, right = formula(published.left, known), formula(published.right, known)
+        integrals = trials[trial] if trials else {}
+        left, right = (
+            formula(side, known, integrals=integrals) for side in (published.left, published.right)
+        )
         return f"({left}-{right})/(ABS({left})+ABS({right}))"
 
     # Near the root the sign of the residual is noise: rows may differ by what doubles err.
@@ -75,7 +111,7 @@ def _write_root(page: Page, first: int, record: Record, step: StepRecord, cells:
     lower_positive = 1 if step.halvings[0].low != step.halvings[1].low else 0
     lower_positive = lower_positive if step.halvings[0].residual > 0 else 1 - lower_positive
     page.formula(
-        first, _SIGN, f"IF({residual(reference(ROOTS, first, _LOW))}>0,1,0)", lower_positive
+        first, _SIGN, f"IF({residual(reference(ROOTS, first, _LOW), 0)}>0,1,0)", lower_positive
     )
     for count, row_values in enumerate(step.halvings):
         row = first + count
@@ -96,7 +132,7 @@ def _write_root(page: Page, first: int, record: Record, step: StepRecord, cells:
         page.formula(
             row,
             _RESIDUAL,
-            residual(reference(ROOTS, row, _MIDDLE)),
+            residual(reference(ROOTS, row, _MIDDLE), count + 1),
             row_values.residual,
             page.styles.change,
             scale=1.0,
