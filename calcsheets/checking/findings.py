@@ -9,8 +9,8 @@ from fractions import Fraction
 from types import MappingProxyType
 from typing import Any
 
-from ..expressions import Condition, Equation, Expr, Sum, Symbol
-from ..record import InputRecord, LimitRecord, Record, ResultRecord, StepRecord
+from ..expressions import Condition, Equation, Expr, Number, Sum, Symbol
+from ..record import InputRecord, IntegralRecord, LimitRecord, Record, ResultRecord, StepRecord
 from .decimals import evaluate_decimal
 
 _TOLERANCE = 1e-12
@@ -82,6 +82,8 @@ def _check_step(record: Record, step: StepRecord) -> Iterator[Finding]:
     values[step.symbol] = mpmath.mpf(step.value)
     yield _check_equation(part, step.key, published, values)
     yield from _check_members(record, part, step, values)
+    for item in step.integrals:
+        yield _check_integral(part, step, item, values)
     values |= {operand.symbol: mpmath.mpf(operand.value) for operand in step.limit_operands}
     for limit in step.limits:
         yield _check_limit(part, step, limit, values)
@@ -106,6 +108,20 @@ def _check_members(
         yield _check_equation(part, step.key, member.published, inside)
 
 
+def _check_integral(
+    part: str, step: StepRecord, item: IntegralRecord, values: Mapping[Symbol, Any]
+) -> Finding:
+    """The sum over places is made again, and the integral computed by another quadrature."""
+    import mpmath
+
+    weighted = mpmath.fsum(mpmath.mpf(node.weight) * node.height for node in item.nodes)
+    again = (mpmath.mpf(item.high) - item.low) * weighted
+    if abs(again - item.total) > _TOLERANCE * abs(item.total) + abs(item.total_error):
+        return Finding(part, step.key, "failed", "an integral is not the sum of its places")
+    same = Equation(item.integral, Number(Fraction(item.total)))
+    return _check_equation(part, step.key, same, values, "an integral and its sum")
+
+
 def _check_limit(
     part: str, step: StepRecord, limit: LimitRecord, values: Mapping[Symbol, Any]
 ) -> Finding:
@@ -127,7 +143,11 @@ def _check_test(part: str, step: StepRecord, values: Mapping[Symbol, Any]) -> Fi
 
 
 def _check_equation(
-    part: str, key: str, published: Equation, values: Mapping[Symbol, Any]
+    part: str,
+    key: str,
+    published: Equation,
+    values: Mapping[Symbol, Any],
+    what: str = "sides of the published form",
 ) -> Finding:
     """The value is put into the published form.
 
@@ -140,7 +160,7 @@ def _check_equation(
     allowed = _TOLERANCE * scale + rounding
     difference = 0.0 if scale == 0 else float(abs(apart) / scale)
     verdict = "passed" if abs(apart) <= allowed else "failed"
-    return Finding(part, key, verdict, f"sides of the published form differ by {difference:.1e}")
+    return Finding(part, key, verdict, f"{what} differ by {difference:.1e}")
 
 
 def _effect(published: Equation, values: Mapping[Symbol, Any], symbol: Symbol, apart: Any) -> Any:

@@ -14,6 +14,7 @@ from ..relations import (
     Regime,
     Relation,
     Source,
+    ending_in,
     mixture_relations,
     starting_from,
 )
@@ -216,6 +217,7 @@ def _places(brief: Brief) -> Iterator[tuple[Place, str]]:
         place = _leg_place(leg, legs)
         yield place, leg.process
         yield place, starting_from(leg.process, kinds[leg.start])
+        yield place, ending_in(leg.process, kinds[leg.end])
 
 
 def _gas_place(brief: Brief) -> Place:

@@ -2,7 +2,17 @@
 
 from .library import STATION_KINDS, Library, load_library
 from .mixtures import mixture_relations
-from .relation import Branch, Chapter, Limit, Process, Regime, Relation, Source, starting_from
+from .relation import (
+    Branch,
+    Chapter,
+    Limit,
+    Process,
+    Regime,
+    Relation,
+    Source,
+    ending_in,
+    starting_from,
+)
 
 __all__ = [
     "STATION_KINDS",
@@ -14,6 +24,7 @@ __all__ = [
     "Regime",
     "Relation",
     "Source",
+    "ending_in",
     "load_library",
     "mixture_relations",
     "starting_from",

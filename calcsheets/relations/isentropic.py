@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from ..expressions import Function, sqrt, symbols
-from .relation import Branch, Chapter, Limit, Process, Relation
+from .relation import Branch, Chapter, Limit, Process, Relation, ending_in
 from .roles import INLET, OUTLET
 from .sources import definition, derived, naca_1135, textbook
 from .thermodynamics import CONSTANT_HEATS, PERFECT, REVERSIBLE
@@ -185,7 +185,7 @@ _PASSAGES = (
         "Adiabatic flow: one stagnation temperature",
         T_02.equals(T_01),
         textbook("First law of thermodynamics, steady adiabatic flow"),
-        (ISENTROPIC_FLOW, PASSAGE, "orifice", "normal shock"),
+        (ISENTROPIC_FLOW, PASSAGE, ending_in("orifice", "stream"), "normal shock"),
         assumptions=("no heat exchange and no shaft work between the stations",),
     ),
     Relation(

@@ -11,7 +11,7 @@ from types import MappingProxyType
 from ..errors import DefinitionError
 from ..expressions import expression_to_mathml
 from . import isentropic, orifices, shocks, streams, thermodynamics, vessels
-from .relation import Chapter, Process, Regime, Relation, starting_from
+from .relation import Chapter, Process, Regime, Relation, ending_in, starting_from
 
 STATION_KINDS = ("stream", "vessel")
 
@@ -33,7 +33,9 @@ class Library:
             if names.count(name) > 1:
                 raise DefinitionError(f"relation {name}", "the name is taken twice")
         offers = {*STATION_KINDS, "gas", "site", *self.processes}
-        offers |= {starting_from(p, kind) for p in self.processes for kind in STATION_KINDS}
+        for kind in STATION_KINDS:
+            offers |= {starting_from(process, kind) for process in self.processes}
+            offers |= {ending_in(process, kind) for process in self.processes}
         for item in items:
             unknown = sorted(set(item.offered_by) - offers)
             if unknown:

@@ -184,6 +184,11 @@ def starting_from(process: str, station_kind: str) -> str:
     return f"{process} from a {station_kind}"
 
 
+def ending_in(process: str, kind: str) -> str:
+    """Return the name under which a process that ends in a kind of station offers relations."""
+    return f"{process} into a {kind}"
+
+
 @dataclass(frozen=True)
 class Chapter:
     """The relations of one subject.

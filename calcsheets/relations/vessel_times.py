@@ -201,8 +201,27 @@ LET_DOWN_TIMES = (
 )  # fmt: skip
 
 
+def _choked_filling_time(name: str, title: str, process: str, heating: Expr, heat: str) -> Relation:
+    """The filling that stays choked; ``heating`` is what R T is to the pressure."""
+    adiabatic = process == FILLING_ADIABATIC
+    return Relation(
+        name,
+        title,
+        t.equals(
+            V_1 * sqrt(R * T_s) / (C_d * A * heating)
+            * _CHOKED_FACTOR / sqrt(gamma) * ((p_2 - p_1) / p_s)
+        ),
+        derived(f"Mass balance of the vessel {heat} with constant choked mass flow"),
+        (process,),
+        regime=CHOKED_THROUGHOUT,
+        also=_STARTS_CHOKED,
+        assumptions=(*_FILLING, *(("no heat to the walls",) if adiabatic else ())),
+        cautions=HOT if adiabatic else (),
+    )  # fmt: skip
+
+
 def _filling_time(name: str, title: str, process: str, heating: Expr, heat: str) -> Relation:
-    """The choked filling that turns unchoked; ``heating`` is what R T is to the pressure."""
+    """The choked filling that turns unchoked; ``heating`` as above."""
     adiabatic = process == FILLING_ADIABATIC
     return Relation(
         name,
@@ -263,6 +282,13 @@ FILLING_TIMES = (
         also=_STARTS_CHOKED,
         assumptions=("constant supply state",),
     ),
+    _choked_filling_time(
+        "filling_time_isothermal",
+        "Time of a choked filling at constant temperature",
+        FILLING_ISOTHERMAL,
+        R * T_1,
+        _AT_CONSTANT_TEMPERATURE,
+    ),
     _filling_time(
         "filling_time_isothermal_to_unchoked",
         "Time of a filling at constant temperature, choked and then unchoked",
@@ -276,6 +302,13 @@ FILLING_TIMES = (
         FILLING_ISOTHERMAL,
         R * T_1,
         _AT_CONSTANT_TEMPERATURE,
+    ),
+    _choked_filling_time(
+        "filling_time_adiabatic",
+        "Time of a choked filling without heat exchange",
+        FILLING_ADIABATIC,
+        gamma * R * T_s,
+        _WITHOUT_HEAT,
     ),
     _filling_time(
         "filling_time_adiabatic_to_unchoked",

@@ -5,12 +5,13 @@ from __future__ import annotations
 from collections.abc import Callable
 from typing import Any
 
-from flint import acb, arb
+from flint import acb, arb, ctx
 
 from .complex_balls import ComplexFunction
 
 Ball = Any  # flint.arb has no type information
 _MOST_EVALUATIONS = 20_000
+_SHARE = arb(2) ** -10
 
 
 def integral_ball(
@@ -32,7 +33,13 @@ def integral_ball(
         has no real value on a part of the way.
     """
     start, end = arb(low.mid()), arb(high.mid())
-    value = acb.integral(complex_function, acb(start), acb(end), eval_limit=_MOST_EVALUATIONS)
+    value = acb.integral(
+        complex_function,
+        acb(start),
+        acb(end),
+        rel_tol=_tolerance(abs(end - start), low.rad() + high.rad()),
+        eval_limit=_MOST_EVALUATIONS,
+    )
     if not value.imag.contains(0):
         return None
     total = value.real
@@ -41,3 +48,10 @@ def integral_ball(
     if not low.is_exact():
         total = total - function(low) * (low - start)
     return total
+
+
+def _tolerance(way: Ball, uncertain: Ball) -> Ball:
+    """What the integrator aims at: no finer than what uncertain limits leave anyway."""
+    finest = arb(2) ** -ctx.prec
+    coarse = arb(uncertain) * _SHARE
+    return arb((coarse / way).mid()) if coarse > finest * way else finest

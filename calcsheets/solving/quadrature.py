@@ -16,6 +16,7 @@ from flint import arb
 from ..errors import UntabulatedIntegral
 from ..expressions import Expr, Integral, Number, Symbol, integrals_in, replace_integrals
 from .balls import Ball, evaluate, midpoint
+from .bound import BALLS, bind
 
 PLACES_OF_A_PART = 16
 _PARTS = (1, 2, 4, 8)
@@ -118,8 +119,8 @@ def _parts(integral: Integral, values: Mapping[Symbol, Ball], count: int) -> _Pa
     low, high = evaluate(integral.low, values), evaluate(integral.high, values)
     places, weights = _gauss_legendre(count)
     at = tuple(low + (high - low) * place for place in places)
-    inside = [{**values, integral.variable: y} for y in at]
-    heights = tuple(evaluate(integral.integrand, known) for known in inside)
+    integrand = bind(integral.integrand, values, integral.variable, BALLS)
+    heights = tuple(integrand(y) for y in at)
     weighted = [weight * height for weight, height in zip(weights, heights, strict=True)]
     size = sum((abs(part) for part in weighted), arb(0))
     total = sum(weighted, arb(0))

@@ -19,7 +19,6 @@ from ...expressions import (
     decimal_text,
     dimension_of,
 )
-from ...quantities import Dimension, catalogue
 from ...record import LimitRecord, Record, RelationRecord, StepRecord
 from ..typesetting import (
     NumberText,
@@ -33,6 +32,7 @@ from ..typesetting import (
 )
 from .breaking import inside_of
 from .figures import (
+    coherent_unit,
     equation_html,
     equation_picture,
     number_html,
@@ -41,6 +41,7 @@ from .figures import (
     value_html,
     working,
 )
+from .integrals import IntegralLine, integral_lines, running_variables
 from .picture import picture
 from .views import ResultLine, known_text, result_lines
 
@@ -70,7 +71,8 @@ class Line:
 
 @dataclass(frozen=True)
 class Where:
-    """One line of the list of symbols; ``kind`` is ``input``, ``step`` or ``constant``."""
+    """One line of the list of symbols; ``kind`` is ``input``, ``step``, ``integral`` or
+    ``constant``."""
 
     symbol: Markup
     title: str
@@ -110,6 +112,7 @@ class Card:
     bracket: tuple[Markup, ...]
     other_roots: tuple[tuple[Markup, str], ...]
     limits: tuple[LimitLine, ...]
+    integrals: tuple[IntegralLine, ...]
     where: tuple[Where, ...]
     results: tuple[ResultLine, ...]
 
@@ -143,7 +146,8 @@ def _card(record: Record, step: StepRecord, width: float) -> Card:
         bracket=tuple(value_html(end, step.unit) for end in step.bracket),
         other_roots=tuple((value_html(r.value, step.unit), r.reason) for r in step.other_roots),
         limits=tuple(_limit(limit, width) for limit in step.limits),
-        where=(*_operands(step), *_constants(published)),
+        integrals=integral_lines(step, width),
+        where=(*_operands(step), *_running(step), *_constants(published)),
         results=tuple(line for line in result_lines(record) if line.result.step == step.number),
     )
 
@@ -240,12 +244,6 @@ def _limit(limit: LimitRecord, width: float) -> LimitLine:
     return LimitLine(shown, sides[0], sides[1], limit.holds, limit.reason)
 
 
-def coherent_unit(dimension: Dimension) -> str:
-    """Return the coherent unit of a dimension by the name that the vocabulary gives it."""
-    named = (q.unit for q in catalogue().values() if q.dimension == dimension)
-    return "1" if dimension.is_one else next(named, str(dimension))
-
-
 def _operands(step: StepRecord) -> Iterator[Where]:
     for operand in (*step.operands, *step.limit_operands):
         kind = "input" if operand.input else "step"
@@ -257,6 +255,14 @@ def _operands(step: StepRecord) -> Iterator[Where]:
             kind,
             operand.input or operand.step,
             "",
+        )
+
+
+def _running(step: StepRecord) -> Iterator[Where]:
+    """The variables of integrals, which have no value of their own."""
+    for symbol in running_variables(step):
+        yield Where(
+            symbol_html(symbol), symbol.definition.title, "", Markup("runs"), "integral", 0, ""
         )
 
 

@@ -8,6 +8,7 @@ from fractions import Fraction
 from markupsafe import Markup, escape
 
 from ...expressions import Condition, Constant, Equation, Expr, Symbol, decimal_text
+from ...quantities import Dimension, catalogue
 from ...record import InputRecord, ResultRecord
 from ..typesetting import (
     NumberText,
@@ -94,6 +95,12 @@ def equation_picture(statement: Expr | Equation | Condition, width: float) -> Pi
 def sides_html(left: str, right: str, alternative: str, width: float) -> Markup:
     """Return two pieces of MathML with an equals sign between them as a picture."""
     return picture(joined((inside_of(left), inside_of(right))), width).svg(alternative)
+
+
+def coherent_unit(dimension: Dimension) -> str:
+    """Return the coherent unit of a dimension by the name that the vocabulary gives it."""
+    named = (q.unit for q in catalogue().values() if q.dimension == dimension)
+    return "1" if dimension.is_one else next(named, str(dimension))
 
 
 def conversion_html(item: InputRecord) -> Markup:
