@@ -7,10 +7,12 @@ from dataclasses import dataclass
 from functools import cached_property
 
 from ..brief import Brief, Leg, SameAs, Station
-from ..expressions import Condition, Equation, Expr, Symbol
+from ..expressions import Condition, Equation, Expr, Number, Symbol
 from ..quantities import Variable
 from ..relations import (
+    Branch,
     Library,
+    Limit,
     Regime,
     Relation,
     Source,
@@ -58,14 +60,14 @@ class Instance:
         place: where it is offered.
         rank: position of the relation in the library; of two equal ways the first is taken.
         members: the relations that it combines, where it is a coupled set.
-        conditions: what a solution of a coupled set must meet besides.
+        limits: what a solution of a coupled set must meet besides.
     """
 
     relation: Relation
     place: Place
     rank: int
     members: tuple[Member, ...] = ()
-    conditions: tuple[Condition, ...] = ()
+    limits: tuple[Limit, ...] = ()
 
     @cached_property
     def binding(self) -> Mapping[Symbol, Variable]:
@@ -158,6 +160,38 @@ class Problem:
         """Every variable that the brief gives."""
         return frozenset(given.variable for given in self.brief.given)
 
+    @cached_property
+    def branches(self) -> Mapping[Variable, tuple[Branch, ...]]:
+        """The branches of each variable: those that relations offered at its place name."""
+        found: dict[Variable, dict[str, Branch]] = {}
+        for instance in self.instances:
+            for branch in instance.relation.branches:
+                variable = _bounded(instance.place, branch.condition)
+                if variable is not None:
+                    found.setdefault(variable, {}).setdefault(branch.name, branch)
+        return {variable: tuple(named.values()) for variable, named in found.items()}
+
+    @cached_property
+    def demands(self) -> Mapping[Variable, tuple[Limit, ...]]:
+        """What the processes ask of variables at their stations, as a shock asks of M."""
+        found: dict[Variable, dict[Limit, None]] = {}
+        processes = {leg.name for leg in self.brief.legs}
+        for instance in self.instances:
+            for limit in instance.relation.limits if instance.place.name in processes else ():
+                variable = _bounded(instance.place, limit.condition)
+                if variable is not None and limit.essential and not instance.relation.regime:
+                    found.setdefault(variable, {}).setdefault(limit)
+        return {variable: tuple(limits) for variable, limits in found.items()}
+
+    def branch_at(self, place: str) -> str:
+        """Return the branch stated at a place, empty for none."""
+        return self._stated_branches.get(place, "")
+
+    @cached_property
+    def _stated_branches(self) -> Mapping[str, str]:
+        stated = {station.name: station.branch for station in self.brief.stations}
+        return stated | {leg.name: leg.branch for leg in self.brief.legs}
+
     def title(self, variable: Variable) -> str:
         """Return the place of a variable in words."""
         return self._titles.get(variable.place, variable.place)
@@ -168,6 +202,13 @@ class Problem:
         titles.update({station.name: station.title for station in self.brief.stations})
         titles.update({leg.name: leg.title for leg in self.brief.legs})
         return titles
+
+
+def _bounded(place: Place, condition: Condition) -> Variable | None:
+    """The variable that a condition compares with a number, if that is all it does."""
+    if isinstance(condition.left, Symbol) and isinstance(condition.right, Number):
+        return place.variable(condition.left)
+    return None
 
 
 def state_problem(brief: Brief, library: Library) -> Problem:

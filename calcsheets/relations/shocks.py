@@ -21,14 +21,17 @@ _MODEL = (PERFECT, CONSTANT_HEATS, "thin shock normal to the stream, no heat exc
 _SUPERSONIC = (Limit(M_1.at_least(1), "a shock stands only in supersonic flow", essential=True),)
 
 
-def _shock(name: str, title: str, equation: Equation, source: Source) -> Relation:
+_SUBSONIC = Limit(M_2.at_most(1), "behind a normal shock the flow is subsonic", essential=True)
+
+
+def _shock(name: str, title: str, equation: Equation, source: Source, *limits: Limit) -> Relation:
     return Relation(
         name,
         title,
         equation,
         source,
         (NORMAL_SHOCK,),
-        limits=_SUPERSONIC,
+        limits=(*_SUPERSONIC, *limits),
         assumptions=_MODEL,
     )
 
@@ -63,6 +66,7 @@ CHAPTER = Chapter(
             "Mach number behind a normal shock",
             (M_2**2).equals(((gamma - 1) * M_1**2 + 2) / (2 * gamma * M_1**2 - (gamma - 1))),
             naca_1135("eq. 96"),
+            _SUBSONIC,
         ),
         _shock(
             "shock_stagnation_pressure",

@@ -14,16 +14,9 @@ from .bisection import HALVINGS, Bisection, Halving
 from .doubles import Doubles, TableErrors, in_doubles
 from .moves import ACTIONS, Isolation, Move, isolate, occurrences
 from .quadrature import Table, tables_of
+from .question import Question, compare, residual_of, size_of
 from .run import Outcome, RegimeOutcome, StepOutcome, solve_problem
-from .solve import (
-    OtherRoot,
-    Question,
-    Solution,
-    compare,
-    residual_of,
-    size_of,
-    solve,
-)
+from .solve import OtherRoot, Solution, solve
 
 __all__ = [
     "ACTIONS",

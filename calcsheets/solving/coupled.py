@@ -189,7 +189,7 @@ class _Combination:
             place,
             closing.rank,
             members,
-            tuple(self._conditions(expressions)),
+            tuple(self._demands(expressions)),
         )
         regimes = tuple(v for v, _ in source.regimes if v not in assumed)
         inputs = [v for v in source.binding.values() if v != self.loop.torn]
@@ -238,25 +238,27 @@ class _Combination:
             if condition is not None:
                 yield replace(limit, condition=condition)
 
-    def _conditions(self, expressions: Mapping[Variable, Expr]) -> Iterator[Condition]:
-        """Bounds, limits and stated branches of what was eliminated."""
+    def _demands(self, expressions: Mapping[Variable, Expr]) -> Iterator[Limit]:
+        """Bounds, limits and branches of what was eliminated."""
         for variable, expr in expressions.items():
             quantity = catalogue()[variable.symbol]
             low, high = Number(quantity.low), Number(quantity.high)
             open_end = quantity.low == 0 and not quantity.zero
-            yield Condition(expr, ">" if open_end else ">=", low)
-            yield Condition(expr, "<=", high)
+            reason = f"{variable} would lie outside its bounds"
+            yield Limit(Condition(expr, ">" if open_end else ">=", low), reason, True)
+            yield Limit(Condition(expr, "<=", high), reason, True)
+            for limit in self.problem.demands.get(variable, ()):
+                yield replace(limit, condition=replace(limit.condition, left=expr))
+            stated = self.problem.branch_at(variable.place)
+            for branch in self.problem.branches.get(variable, ()):
+                if branch.name == stated:
+                    reason = f"{variable} would not lie on the stated branch, {stated}"
+                    yield Limit(replace(branch.condition, left=expr), reason, True)
         for item in self.derived:
             for limit in item.instance.relation.limits:
                 condition = self._condition(item.instance, limit.condition, expressions)
                 if condition is not None:
-                    yield condition
-        for instance, branch in self._stated_branches():
-            condition = self._condition(instance, branch.condition, expressions)
-            if condition is not None and self.loop.torn not in (
-                instance.place.variables(branch.condition.symbols).values()
-            ):
-                yield condition
+                    yield replace(limit, condition=condition)
 
     def _condition(
         self, instance: Instance, condition: Condition, expressions: Mapping[Variable, Expr]
@@ -272,29 +274,10 @@ class _Combination:
             substitute(condition.right, inside),
         )
 
-    def _stated_branches(self) -> Iterator[tuple[Instance, Branch]]:
-        brief = self.problem.brief
-        stated = {station.name: station.branch for station in brief.stations}
-        stated |= {leg.name: leg.branch for leg in brief.legs}
-        for instance in self._instances:
-            for branch in instance.relation.branches:
-                places = {
-                    v.place for v in instance.place.variables(branch.condition.symbols).values()
-                }
-                if any(stated.get(place) == branch.name for place in places):
-                    yield instance, branch
-
     def _branches(self, torn: Symbol) -> Iterator[Branch]:
         """Branches of the torn unknown itself."""
-        found: dict[str, Branch] = {}
-        for instance in self._instances:
-            for branch in instance.relation.branches:
-                variables = instance.place.variables(branch.condition.symbols)
-                if set(variables.values()) == {self.loop.torn}:
-                    condition = self._condition(instance, branch.condition, {})
-                    if condition is not None:
-                        found.setdefault(branch.name, Branch(branch.name, condition))
-        yield from found.values()
+        for branch in self.problem.branches.get(self.loop.torn, ()):
+            yield replace(branch, condition=replace(branch.condition, left=torn))
 
     @property
     def _instances(self) -> tuple[Instance, ...]:

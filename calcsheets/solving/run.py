@@ -3,11 +3,11 @@
 from __future__ import annotations
 
 from collections.abc import Iterator, Mapping
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 from itertools import product
 
 from ..errors import AmbiguousRegime, NotEnoughInputs, OutsideLimit, SolvingError
-from ..expressions import Condition
+from ..expressions import Condition, Symbol
 from ..planning import (
     Edge,
     Instance,
@@ -22,7 +22,8 @@ from ..quantities import Variable, catalogue
 from ..relations import Limit
 from .balls import Ball, OutsideDomainError, evaluate, exact_ball, working_precision
 from .coupled import Combiner
-from .solve import Question, Solution, compare, solve
+from .question import Question, compare
+from .solve import Solution, solve
 
 _MOST_ASSUMED = 4
 _OPPOSITE = {"<=": ">", "<": ">=", ">=": "<", ">": "<="}
@@ -167,38 +168,34 @@ class _Run:
         unknown = edge.unknown
         if unknown is None:
             raise NotEnoughInputs(str(edge.target), "", ())
-        conditions = (*self._conditions(source), *source.conditions)
-        symbols = {*source.relation.symbols, *(s for c in conditions for s in c.symbols)}
-        bound = {symbol: source.place.variable(symbol) for symbol in symbols}
+        limits = tuple(self._limits(edge.target, unknown, source))
+        named = (s for limit in (*limits, *source.relation.limits) for s in limit.condition.symbols)
+        bound = source.place.variables((*source.relation.symbols, *named))
         values = {
             symbol: self.values[variable]
             for symbol, variable in bound.items()
             if variable in self.values and variable != edge.target
         }
-        branch = self._branch(edge.target.place) or source.place.branch
+        branch = self.problem.branch_at(edge.target.place) or source.place.branch
         place = f"the place {edge.target.place}"
         solution = solve(
-            Question(source.relation, unknown, values, branch, str(edge.target), place, conditions)
+            Question(source.relation, unknown, values, branch, str(edge.target), place, limits)
         )
         self.values[edge.target] = solution.value
         return solution
 
-    def _conditions(self, source: Instance) -> Iterator[Condition]:
-        """The test of the regime in which a relation holds."""
+    def _limits(self, target: Variable, unknown: Symbol, source: Instance) -> Iterator[Limit]:
+        """The test of the regime in which a relation holds, and what processes ask."""
         variable = source.regime_variable
         if variable is not None and not source.relation.regime_role:
             regime = self.problem.regimes[variable].regime
             test = regime.condition
-            if source.relation.regime == regime.when_true:
-                yield test
-            else:
-                yield Condition(test.left, _OPPOSITE[test.comparison], test.right)
-
-    def _branch(self, place: str) -> str:
-        brief = self.problem.brief
-        branches = {station.name: station.branch for station in brief.stations}
-        branches |= {leg.name: leg.branch for leg in brief.legs}
-        return branches.get(place, "")
+            if source.relation.regime != regime.when_true:
+                test = Condition(test.left, _OPPOSITE[test.comparison], test.right)
+            yield Limit(test, f"this relation holds where it is {source.relation.regime}", True)
+        for limit in self.problem.demands.get(target, ()):
+            yield replace(limit, condition=replace(limit.condition, left=unknown))
+        yield from source.limits
 
     def finish(self, reached: Reach) -> Outcome:
         """Solve everything that the wanted results need."""

@@ -30,7 +30,7 @@ from calcsheets.errors import CalcsheetsError, SeveralRoots
 from calcsheets.expressions import CONSTANTS, Symbol
 from calcsheets.relations import Relation, load_library
 from calcsheets.solving import Ball, Question, compare, midpoint, size_of, solve, working_precision
-from tests.relations.states import random_states, regime_conditions
+from tests.relations.states import random_states, regime_limits
 
 STATES = 25
 SEED = 7
@@ -160,7 +160,7 @@ def _question(relation: Relation, unknown: Symbol, state: Mapping[Symbol, Ball])
         (b.name for b in relation.branches if compare(b.condition, state) is not False), ""
     )
     known = {symbol: ball for symbol, ball in state.items() if symbol != unknown}
-    tests = regime_conditions(relation)
+    tests = regime_limits(relation)
     return Question(relation, unknown, known, branch, str(unknown), "the station", tests)
 
 

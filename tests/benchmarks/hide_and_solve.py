@@ -38,6 +38,8 @@ from tests.benchmarks.random_paths import (
 
 PROBLEMS = 1000
 _EXACT = 1e-9
+_ATTEMPTS = 200
+_WIDTHS = (0.3, 0.7, 1.5, 2.5)
 _DIGITS_OF_INPUT = 1e-13
 
 
@@ -179,8 +181,9 @@ def another_state(problem: Hidden) -> bool:
         return np.where(np.isfinite(found), found, 1e3)
 
     chance = random.Random(5)
-    for _ in range(60):
-        moved = start + np.array([chance.gauss(0, 0.7) for _ in start])
+    for attempt in range(_ATTEMPTS):
+        width = _WIDTHS[attempt % len(_WIDTHS)]
+        moved = start + np.array([chance.gauss(0, width) for _ in start])
         fit = least_squares(apart, moved, xtol=1e-15, ftol=1e-15, gtol=1e-15)
         if np.abs(fit.fun).max() < 1e-9 and np.abs(fit.x - start).max() > 1e-4:
             state = path.state_of(tuple(np.exp(fit.x)))

@@ -252,11 +252,20 @@ def test_redundant_properties_that_agree_are_shown_as_a_check() -> None:
 
 
 def test_a_branch_is_asked_for_where_two_roots_remain() -> None:
-    text = (ROOT / "examples" / "nozzle-and-shock.toml").read_text("utf-8")
     with pytest.raises(SeveralRoots) as caught:
-        calcsheets.calculate(parse_brief(text.replace('branch = "supersonic"\n', "")))
+        calcsheets.calculate(calcsheets.read_brief(ROOT / "tests" / "brief" / "nozzle.toml"))
     assert caught.value.branches == ("subsonic", "supersonic")
     assert "Which is meant?" in str(caught.value)
+
+
+def test_a_shock_decides_the_branch_before_it_and_the_sheet_says_so() -> None:
+    text = (ROOT / "examples" / "nozzle-and-shock.toml").read_text("utf-8")
+    record = calcsheets.calculate(parse_brief(text.replace('branch = "supersonic"\n', "")))
+    (step,) = [step for step in record.steps if step.other_roots]
+    assert step.value is not None and step.value > 1
+    assert [root.reason for root in step.other_roots] == [
+        "outside a limit: a shock stands only in supersonic flow"
+    ]
 
 
 def test_fifty_stations_in_a_row_are_planned() -> None:

@@ -7,7 +7,7 @@ from collections.abc import Mapping
 from fractions import Fraction
 
 from calcsheets.expressions import Condition, Symbol
-from calcsheets.relations import Relation, load_library
+from calcsheets.relations import Limit, Relation, load_library
 from calcsheets.solving import (
     Ball,
     compare,
@@ -44,7 +44,7 @@ def range_of(symbol: Symbol) -> tuple[float, float]:
     return (0.01, 100.0)
 
 
-def regime_conditions(relation: Relation) -> tuple[Condition, ...]:
+def regime_limits(relation: Relation) -> tuple[Limit, ...]:
     """What the regime of a relation asks of its own quantities, where it can be said in them."""
     found = []
     for regime in load_library().regimes:
@@ -53,10 +53,11 @@ def regime_conditions(relation: Relation) -> tuple[Condition, ...]:
         if not set(regime.condition.symbols) <= set(relation.symbols):
             continue
         if relation.regime == regime.when_true:
-            found.append(regime.condition)
+            found.append(Limit(regime.condition, relation.regime, essential=True))
         elif relation.regime == regime.when_false:
             test = regime.condition
-            found.append(Condition(test.left, _OPPOSITE[test.comparison], test.right))
+            opposite = Condition(test.left, _OPPOSITE[test.comparison], test.right)
+            found.append(Limit(opposite, relation.regime, essential=True))
     return tuple(found)
 
 
@@ -99,6 +100,6 @@ def _possible(relation: Relation, dependent: Symbol, state: Mapping[Symbol, Ball
     # A value far outside the field shows nothing but rounding.
     if not 1e-9 < abs(midpoint(value)) < 1e9:
         return False
-    conditions = [*regime_conditions(relation), *(limit.condition for limit in relation.limits)]
+    conditions = [limit.condition for limit in (*regime_limits(relation), *relation.limits)]
     known = [c for c in conditions if set(c.symbols) <= set(state)]
     return all(compare(condition, state) is True for condition in known)

@@ -12,7 +12,7 @@ from flint import arb
 
 from calcsheets.errors import DefinitionError, SeveralRoots
 from calcsheets.expressions import Condition, Symbol, symbols
-from calcsheets.relations import Chapter, Library, Relation, Source, load_library
+from calcsheets.relations import Chapter, Library, Limit, Relation, Source, load_library
 from calcsheets.relations.relation import KNOWN
 from calcsheets.sheets.typesetting import plain_text
 from calcsheets.solving import (
@@ -119,7 +119,8 @@ def _decided(question: Question, hidden: Ball) -> Question:
     values = {**question.values, question.unknown: hidden}
     below = compare(choked, values) is True
     comparison = choked.comparison if below else ">"
-    return replace(question, conditions=(Condition(choked.left, comparison, choked.right),))
+    test = Condition(choked.left, comparison, choked.right)
+    return replace(question, limits=(Limit(test, "the regime", essential=True),))
 
 
 def test_a_wrong_dimension_is_refused_at_definition() -> None:
