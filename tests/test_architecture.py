@@ -108,4 +108,4 @@ def test_every_dataclass_but_errors_and_running_state_is_frozen() -> None:
                 if text.startswith("dataclass") and "frozen=True" not in text:
                     loose.append((stage_of(path), node.name))
     assert {stage for stage, _ in loose} <= {"errors", "solving"}
-    assert [name for stage, name in loose if stage == "solving"] == ["_Run"]
+    assert [name for stage, name in loose if stage == "solving"] == ["Run"]

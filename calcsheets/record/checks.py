@@ -2,26 +2,20 @@
 
 from __future__ import annotations
 
-import math
 from collections.abc import Iterator
 
 from ..errors import ContradictoryInputs, SolvingError
 from ..planning import Instance
 from ..quantities import Variable, catalogue
 from ..solving import (
-    Ball,
+    LARGEST_DIFFERENCE,
     Outcome,
-    OutsideDomainError,
     Question,
-    compare,
-    evaluate,
+    differences,
     midpoint,
     solve,
 )
 from .model import ConsistencyRecord
-
-LARGEST_DIFFERENCE = 0.005
-"""Above this relative difference given values contradict each other and are not rounded alike."""
 
 
 def consistency_checks(outcome: Outcome) -> Iterator[ConsistencyRecord]:
@@ -30,19 +24,8 @@ def consistency_checks(outcome: Outcome) -> Iterator[ConsistencyRecord]:
     Raises:
         ContradictoryInputs: if its sides differ by more than ``LARGEST_DIFFERENCE``.
     """
-    used = {
-        step.edge.source.key for step in outcome.steps if isinstance(step.edge.source, Instance)
-    }
-    for instance in outcome.problem.instances:
+    for instance, difference in differences(outcome):
         variables = tuple(dict.fromkeys(instance.binding.values()))
-        if (
-            instance.key in used
-            or not all(variable in outcome.values for variable in variables)
-            or any(outcome.regimes.get(v) != regime for v, regime in instance.regimes)
-            or not _applies(outcome, instance)
-        ):
-            continue
-        difference = _difference(outcome, instance)
         if abs(difference) > LARGEST_DIFFERENCE:
             raise _contradiction(outcome, instance, variables, difference)
         yield ConsistencyRecord(
@@ -51,33 +34,6 @@ def consistency_checks(outcome: Outcome) -> Iterator[ConsistencyRecord]:
             keys=tuple(str(variable) for variable in variables),
             difference=difference,
         )
-
-
-def _applies(outcome: Outcome, instance: Instance) -> bool:
-    """Whether no limit outside which the relation means nothing is known to be missed."""
-    for limit in instance.relation.limits:
-        bound = instance.place.variables(limit.condition.symbols)
-        values = {s: outcome.values[v] for s, v in bound.items() if v in outcome.values}
-        evaluable = len(values) == len(bound)
-        if limit.essential and evaluable and compare(limit.condition, values) is False:
-            return False
-    return True
-
-
-def _difference(outcome: Outcome, instance: Instance) -> float:
-    """Relative difference of the sides; infinite where a side has no value."""
-    values = {symbol: outcome.values[v] for symbol, v in instance.binding.items()}
-    published = instance.relation.published
-    try:
-        return _relative(evaluate(published.left, values), evaluate(published.right, values))
-    except OutsideDomainError:
-        return math.inf
-
-
-def _relative(left: Ball, right: Ball) -> float:
-    a, b = midpoint(left), midpoint(right)
-    scale = max(abs(a), abs(b))
-    return 0.0 if scale == 0 or a == b else (b - a) / scale
 
 
 def _contradiction(

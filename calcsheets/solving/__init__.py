@@ -1,5 +1,6 @@
 """Stage 6, solving: one planned relation and values become one value with its way and proof."""
 
+from .attempts import solve_problem
 from .balls import (
     PRECISION,
     Ball,
@@ -11,16 +12,18 @@ from .balls import (
     working_precision,
 )
 from .bisection import HALVINGS, Bisection, Halving
+from .consistency import LARGEST_DIFFERENCE, differences
 from .doubles import Doubles, TableErrors, in_doubles
 from .moves import ACTIONS, Isolation, Move, isolate, occurrences
 from .quadrature import Table, tables_of
 from .question import Question, compare, residual_of, size_of
-from .run import Outcome, RegimeOutcome, StepOutcome, solve_problem
+from .run import Outcome, RegimeOutcome, StepOutcome
 from .solve import OtherRoot, Solution, solve
 
 __all__ = [
     "ACTIONS",
     "HALVINGS",
+    "LARGEST_DIFFERENCE",
     "PRECISION",
     "Ball",
     "Bisection",
@@ -39,6 +42,7 @@ __all__ = [
     "TableErrors",
     "compare",
     "decimal_bounds",
+    "differences",
     "evaluate",
     "exact_ball",
     "in_doubles",

@@ -26,6 +26,7 @@ class Question:
         place: where a branch would be stated, for messages.
         limits: what a value must meet besides the limits of the relation: its regime test, and
             what the process asks of the place.
+        choice: which of several roots that nothing tells apart is taken; ``None`` to ask.
     """
 
     relation: Relation
@@ -35,6 +36,7 @@ class Question:
     key: str
     place: str
     limits: tuple[Limit, ...] = ()
+    choice: int | None = None
 
 
 def bounds_of(question: Question) -> tuple[Fraction, Fraction]:

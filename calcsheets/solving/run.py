@@ -4,9 +4,8 @@ from __future__ import annotations
 
 from collections.abc import Iterator, Mapping
 from dataclasses import dataclass, field, replace
-from itertools import product
 
-from ..errors import AmbiguousRegime, NotEnoughInputs, OutsideLimit, SolvingError
+from ..errors import NotEnoughInputs, OutsideLimit, SolvingError
 from ..expressions import Condition, Symbol
 from ..planning import (
     Edge,
@@ -14,13 +13,12 @@ from ..planning import (
     Problem,
     Reach,
     RegimeInstance,
-    closing_inputs,
     loops,
     reach,
 )
-from ..quantities import Variable, catalogue
+from ..quantities import Variable
 from ..relations import Limit
-from .balls import Ball, OutsideDomainError, evaluate, exact_ball, working_precision
+from .balls import Ball, evaluate, exact_ball
 from .coupled import Combiner
 from .question import Question, compare
 from .solve import Solution, solve
@@ -74,11 +72,18 @@ class Outcome:
 
 
 @dataclass
-class _Run:
-    """One attempt, with the regimes that it takes for granted."""
+class Run:
+    """One attempt.
+
+    Attributes:
+        problem: the problem.
+        assumed: regimes that it takes for granted.
+        choices: which of several roots it takes, by the key of the unknown.
+    """
 
     problem: Problem
     assumed: Mapping[Variable, str] = field(default_factory=dict)
+    choices: Mapping[str, int] = field(default_factory=dict)
     values: dict[Variable, Ball] = field(default_factory=dict)
     regimes: dict[Variable, str] = field(default_factory=dict)
     solved: dict[Variable, StepOutcome] = field(default_factory=dict)
@@ -115,7 +120,7 @@ class _Run:
 
     def _couple(self, reached: Reach) -> Edge | None:
         """The smallest coupled set that leads on, where a wanted quantity does not follow."""
-        missing = _missing(self.problem, reached)
+        missing = missing_in(self.problem, reached)
         if not missing:
             return None
         assumed = frozenset(self.assumed)
@@ -179,7 +184,16 @@ class _Run:
         branch = self.problem.branch_at(edge.target.place) or source.place.branch
         place = f"the place {edge.target.place}"
         solution = solve(
-            Question(source.relation, unknown, values, branch, str(edge.target), place, limits)
+            Question(
+                relation=source.relation,
+                unknown=unknown,
+                values=values,
+                branch=branch,
+                key=str(edge.target),
+                place=place,
+                limits=limits,
+                choice=self.choices.get(str(edge.target)),
+            )
         )
         self.values[edge.target] = solution.value
         return solution
@@ -266,127 +280,6 @@ def _essential_limits(edge: Edge) -> tuple[Limit, ...]:
     return tuple(limit for limit in edge.source.relation.limits if limit.essential)
 
 
-def solve_problem(problem: Problem) -> Outcome:
-    """Solve a problem for everything that its brief wants.
-
-    Regimes follow from their tests where the inputs decide them. Where a regime depends on
-    the answer, each is tried and kept only if its own test agrees afterwards.
-
-    Raises:
-        NotEnoughInputs: if a wanted quantity does not follow.
-        AmbiguousRegime: if no regime or more than one agrees with its own test.
-        SolvingError: if a step has no root, or several and no stated branch.
-    """
-    with working_precision():
-        stated = _stated_regimes(problem)
-        run = _Run(problem, stated)
-        reached = run.reach()
-        missing = _missing(problem, reached)
-        if not missing:
-            outcome = run.finish(reached)
-            _require_agreement(outcome, stated)
-            return outcome
-        return _by_assumption(problem, run.regimes, stated, missing[0])
-
-
-def _stated_regimes(problem: Problem) -> dict[Variable, str]:
-    return {Variable("regime", leg.name): leg.regime for leg in problem.brief.legs if leg.regime}
-
-
-def _missing(problem: Problem, reached: Reach) -> list[Variable]:
+def missing_in(problem: Problem, reached: Reach) -> list[Variable]:
+    """Return the wanted variables that do not follow."""
     return [w.variable for w in problem.brief.wanted if w.variable not in reached]
-
-
-def _require_agreement(outcome: Outcome, stated: Mapping[Variable, str]) -> None:
-    for variable, regime in stated.items():
-        step = next((s for s in outcome.steps if s.edge.target == variable), None)
-        if step is not None and step.regime is not None and step.regime.regime != regime:
-            raise AmbiguousRegime(variable.place, (), (regime,))
-
-
-def _by_assumption(
-    problem: Problem,
-    regimes: Mapping[Variable, str],
-    stated: Mapping[Variable, str],
-    missing: Variable,
-) -> Outcome:
-    """Try each combination of the open regimes, and keep those whose tests agree."""
-    open_tests = [variable for variable in sorted(problem.regimes) if variable not in regimes]
-    open_tests = open_tests[:_MOST_ASSUMED]
-    choices = [
-        (problem.regimes[v].regime.when_true, problem.regimes[v].regime.when_false)
-        for v in open_tests
-    ]
-    reachable = False
-    agreeing: list[Outcome] = []
-    for combination in product(*choices) if open_tests else ():
-        assumed = {**stated, **dict(zip(open_tests, combination, strict=True))}
-        run = _Run(problem, assumed)
-        reached = run.reach()
-        if _missing(problem, reached):
-            continue
-        reachable = True
-        try:
-            outcome = run.finish(reached)
-        except (SolvingError, OutsideDomainError):
-            continue
-        if all(step.regime is None or _agrees(step, assumed) for step in outcome.steps):
-            agreeing.append(outcome)
-    distinct = _distinct(agreeing, open_tests)
-    if len(distinct) == 1:
-        return distinct[0]
-    if reachable:
-        place = open_tests[0].place
-        found = tuple(outcome.regimes[open_tests[0]] for outcome in distinct)
-        raise AmbiguousRegime(place, found, choices[0])
-    raise _not_enough(problem, regimes, missing)
-
-
-def _agrees(step: StepOutcome, assumed: Mapping[Variable, str]) -> bool:
-    regime = step.regime
-    return regime is None or assumed.get(step.edge.target, regime.regime) == regime.regime
-
-
-def _distinct(outcomes: list[Outcome], tests: list[Variable]) -> list[Outcome]:
-    """Outcomes that differ only in a regime that no step depends on are one outcome."""
-    kept: dict[tuple[str, ...], Outcome] = {}
-    for outcome in outcomes:
-        sources = (step.edge.source for step in outcome.steps)
-        instances = (source for source in sources if isinstance(source, Instance))
-        used = {variable for instance in instances for variable, _ in instance.regimes}
-        key = tuple(outcome.regimes[test] if test in used else "" for test in tests)
-        kept.setdefault(key, outcome)
-    return list(kept.values())
-
-
-def _not_enough(
-    problem: Problem, regimes: Mapping[Variable, str], missing: Variable
-) -> NotEnoughInputs:
-    quantity = catalogue()[missing.symbol]
-    against = tuple(dict.fromkeys(_against(problem, regimes, missing)))
-    closing = () if against else closing_inputs(problem, regimes, missing)
-    return NotEnoughInputs(
-        wanted=str(missing),
-        title=f"{quantity.title}, {problem.title(missing)}",
-        closing=tuple(tuple(str(variable) for variable in extra) for extra in closing),
-        regimes=against,
-    )
-
-
-def _against(problem: Problem, regimes: Mapping[Variable, str], missing: Variable) -> Iterator[str]:
-    """Say which regimes stand against relations that would give a variable."""
-    for instance in problem.instances:
-        condition = instance.regime_variable
-        if condition is None or missing not in instance.binding.values():
-            continue
-        found, needed = regimes.get(condition), instance.relation.regime
-        offered = [
-            other.relation.regime
-            for other in problem.instances
-            if other.regime_variable == condition and missing in other.binding.values()
-        ]
-        if found is not None and found not in offered:
-            yield (
-                f"The regime of {condition.place} is {found}, and the library gives "
-                f"{missing.symbol} there only where it is {needed}."
-            )

@@ -22,6 +22,7 @@ from .roots import TooManyCellsError, isolate_roots
 from .taylor import taylor_form
 
 _TINY = Fraction(1, 10**15)
+_INCONSISTENT = "nothing consistent follows from it in this calculation"
 _RESIDUAL_SCALE = arb(2) ** -60
 
 
@@ -225,15 +226,16 @@ def _choose(question: Question, roots: tuple[Ball, ...]) -> tuple[Ball, tuple[Ot
             for index, objections in against.items()
             if not any(essential or not essential_only for essential, _ in objections)
         ]
-        if len(taken) > 1:
+        if len(taken) > 1 and (question.choice is None or question.choice >= len(taken)):
             raise several_roots(question, tuple(roots[index] for index in taken))
         if taken:
+            chosen = taken[question.choice or 0] if len(taken) > 1 else taken[0]
             others = (
-                OtherRoot(roots[index], objections[0][1])
+                OtherRoot(roots[index], objections[0][1] if objections else _INCONSISTENT)
                 for index, objections in against.items()
-                if index != taken[0]
+                if index != chosen
             )
-            return roots[taken[0]], tuple(others)
+            return roots[chosen], tuple(others)
     raise no_root(question)
 
 
