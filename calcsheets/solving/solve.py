@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Callable, Mapping
 from dataclasses import dataclass, replace
 from fractions import Fraction
 
@@ -12,7 +12,7 @@ from ..expressions import Expr, Function, Symbol, derivative, symbols_in
 from .balls import Ball, OutsideDomainError, evaluate, exact_ball, midpoint
 from .bisection import Bisection, Search
 from .bound import BALLS, bind
-from .logarithms import logarithm_of
+from .logarithms import is_positive, logarithm_of
 from .moves import Move, isolate
 from .polynomials import polynomial_form
 from .quadrature import Table, tables_of
@@ -22,6 +22,7 @@ from .roots import TooManyCellsError, isolate_roots
 from .taylor import taylor_form
 
 _TINY = Fraction(1, 10**15)
+_APPROACHES = 200
 _INCONSISTENT = "nothing consistent follows from it in this calculation"
 _RESIDUAL_SCALE = arb(2) ** -60
 
@@ -138,12 +139,19 @@ def _bracket(
     difference = question.relation.published.left - question.relation.published.right
     ends = []
     for end in (alone[0] if alone[0] != 0 else alone[1] * _TINY, alone[1]):
-        if not _defined(question, difference, end):
-            while not _defined(question, difference, end):
-                end += (centre - end) / 8
-            end = (end + centre) / 2  # room for changed inputs
-        ends.append(end)
+        ends.append(_towards(centre, end, lambda x: _defined(question, difference, x)))
     return ends[0], ends[1]
+
+
+def _towards(centre: Fraction, end: Fraction, defined: Callable[[Fraction], bool]) -> Fraction:
+    """An end from which on a relation is defined, with room for changed inputs."""
+    if defined(end):
+        return end
+    for _ in range(_APPROACHES):
+        end = Fraction(float(end + (centre - end) / 8))
+        if defined(end):
+            return (end + centre) / 2
+    return centre
 
 
 def _alone(
@@ -201,8 +209,9 @@ def _roots_between(question: Question, low: Fraction, high: Fraction) -> tuple[B
 def _search_form(question: Question) -> Expr:
     """What is zero at a root: the difference of the sides, or of their logarithms.
 
-    Logarithms are taken where the unknown stands in a product form that must be positive,
-    because the other side is known and positive: the roots are the same.
+    Logarithms are taken where both sides must be positive, because they are of a form that
+    cannot be negative or because the other side is known and positive: the roots are the same,
+    and products of large and small factors keep their meaning.
     """
     left, right = question.relation.published.left, question.relation.published.right
     for inner, known in ((left, right), (right, left)):
@@ -211,6 +220,11 @@ def _search_form(question: Question) -> Expr:
         logarithm = logarithm_of(inner)
         if logarithm is not None and evaluate(known, question.values) > 0:
             return logarithm - Function("ln", known)
+    if all(
+        question.unknown in set(symbols_in(side)) and is_positive(side) for side in (left, right)
+    ):
+        logarithms = [logarithm_of(side) or Function("ln", side) for side in (left, right)]
+        return logarithms[0] - logarithms[1]
     return left - right
 
 
