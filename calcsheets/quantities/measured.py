@@ -189,7 +189,7 @@ def quantity_given(quantity: Quantity, measured: Measured) -> Quantity:
     )
 
 
-_PI = Fraction(355, 113)  # only to compare an angle with its bounds
+_PI = Fraction("3.14159265358979323846")  # only to compare an angle with its bounds
 
 
 def _bound(value: Fraction, quantity: Quantity) -> str:

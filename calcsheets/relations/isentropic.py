@@ -17,6 +17,8 @@ p_02, T_02, mdot_2, A_cr2 = (s.of(OUTLET) for s in symbols("p_0 T_0 mdot A_cr"))
 
 ISENTROPIC_FLOW = "isentropic flow"
 PASSAGE = "adiabatic passage"
+_FANS = ("expansion fan", "isentropic compression fan")
+_SHOCKS = ("normal shock", "oblique shock")
 
 _MODEL = (PERFECT, CONSTANT_HEATS)
 _ISENTROPIC = (PERFECT, CONSTANT_HEATS, REVERSIBLE)
@@ -185,7 +187,7 @@ _PASSAGES = (
         "Adiabatic flow: one stagnation temperature",
         T_02.equals(T_01),
         textbook("First law of thermodynamics, steady adiabatic flow"),
-        (ISENTROPIC_FLOW, PASSAGE, ending_in("orifice", "stream"), "normal shock"),
+        (ISENTROPIC_FLOW, PASSAGE, ending_in("orifice", "stream"), *_SHOCKS, *_FANS),
         assumptions=("no heat exchange and no shaft work between the stations",),
     ),
     Relation(
@@ -193,7 +195,7 @@ _PASSAGES = (
         "Isentropic flow: one stagnation pressure",
         p_02.equals(p_01),
         textbook("Second law of thermodynamics, reversible adiabatic flow"),
-        (ISENTROPIC_FLOW,),
+        (ISENTROPIC_FLOW, *_FANS),
         assumptions=(REVERSIBLE,),
     ),
     Relation(
@@ -201,7 +203,7 @@ _PASSAGES = (
         "Steady flow: one mass flow",
         mdot_2.equals(mdot_1),
         textbook("Conservation of mass, steady flow"),
-        (ISENTROPIC_FLOW, PASSAGE, "normal shock"),
+        (ISENTROPIC_FLOW, PASSAGE, *_SHOCKS, *_FANS),
         assumptions=("steady flow without branches between the stations",),
     ),
     Relation(
@@ -209,7 +211,7 @@ _PASSAGES = (
         "Isentropic flow: one critical area",
         A_cr2.equals(A_cr1),
         derived("Conservation of mass with constant stagnation state"),
-        (ISENTROPIC_FLOW,),
+        (ISENTROPIC_FLOW, *_FANS),
         assumptions=_ISENTROPIC,
     ),
 )

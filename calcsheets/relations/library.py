@@ -10,7 +10,16 @@ from types import MappingProxyType
 
 from ..errors import DefinitionError
 from ..expressions import expression_to_mathml
-from . import isentropic, orifices, shocks, streams, thermodynamics, vessels
+from . import (
+    expansions,
+    isentropic,
+    oblique_shocks,
+    orifices,
+    shocks,
+    streams,
+    thermodynamics,
+    vessels,
+)
 from .relation import Chapter, Process, Regime, Relation, ending_in, starting_from
 
 STATION_KINDS = ("stream", "vessel")
@@ -90,6 +99,15 @@ def load_library() -> Library:
     return Library(
         tuple(
             module.CHAPTER
-            for module in (thermodynamics, isentropic, streams, orifices, vessels, shocks)
+            for module in (
+                thermodynamics,
+                isentropic,
+                streams,
+                orifices,
+                vessels,
+                shocks,
+                oblique_shocks,
+                expansions,
+            )
         )
     )

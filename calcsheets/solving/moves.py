@@ -20,6 +20,7 @@ from ..expressions import (
     children,
     symbols_in,
 )
+from .principal import has_one_inverse, never_negative
 
 
 @dataclass(frozen=True)
@@ -153,12 +154,12 @@ def _undo(side: Expr, other: Expr, unknown: Symbol) -> _Undone | None:
         case Root(radicand):
             return _moved("square", None, radicand, Power(other, Number(Fraction(2))))
         case Power(base, exponent) if _holds(base, unknown):
-            return _undo_power(base, exponent, other, unknown)
+            return _undo_power(base, exponent, other)
         case Power(base, exponent):
             logarithm = Function("ln", base)
             solved = Quotient(Function("ln", other), logarithm)
             return _moved("take logarithms and divide by", logarithm, exponent, solved)
-        case Function(name, argument):
+        case Function(name, argument) if has_one_inverse(name, argument):
             inverse = _INVERSE[name]
             return _moved("apply", Function(inverse, other), argument, Function(inverse, other))
         case _:
@@ -174,9 +175,9 @@ def _undo_sum(terms: tuple[Expr, ...], other: Expr, unknown: Symbol) -> _Undone:
     return _moved("subtract", known, inner, other - known)
 
 
-def _undo_power(base: Expr, exponent: Expr, other: Expr, unknown: Symbol) -> _Undone | None:
+def _undo_power(base: Expr, exponent: Expr, other: Expr) -> _Undone | None:
     even = isinstance(exponent, Number) and exponent.value.numerator % 2 == 0
-    if even and not (base == unknown and unknown.definition.low >= 0):
+    if even and not never_negative(base):
         return None
     if exponent == Number(Fraction(2)):
         return _moved("take the positive square root", None, base, Root(other))

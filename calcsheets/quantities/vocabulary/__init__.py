@@ -2,8 +2,8 @@
 
 from types import ModuleType
 
-from . import changes, flow, gas, states, vessels
+from . import changes, flow, gas, states, turning, vessels
 
-SUBJECTS: tuple[ModuleType, ...] = (states, gas, flow, changes, vessels)
+SUBJECTS: tuple[ModuleType, ...] = (states, gas, flow, changes, vessels, turning)
 
 __all__ = ["SUBJECTS"]

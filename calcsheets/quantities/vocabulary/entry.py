@@ -7,6 +7,9 @@ from fractions import Fraction
 from ..dimension import Dimension
 from ..quantity import Kind, Notation, Quantity
 
+RIGHT_ANGLE = "1.5707963267948967"
+"""A quarter of a turn in rad, rounded up, so that 90 degrees lie inside it."""
+
 
 def quantity(
     symbol: str,

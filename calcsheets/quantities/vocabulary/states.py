@@ -6,7 +6,7 @@ from collections.abc import Iterator
 
 from .. import dimension as dim
 from ..quantity import Kind, Notation, Quantity
-from .entry import quantity
+from .entry import RIGHT_ANGLE, quantity
 
 
 def quantities() -> Iterator[Quantity]:
@@ -48,7 +48,7 @@ def quantities() -> Iterator[Quantity]:
     yield quantity(
         "q_dyn", "dynamic pressure", n("q"), pressure, "Pa", kind=Kind.DIFFERENTIAL, zero=True
     )
-    yield quantity("mu", "Mach angle", n("μ"), dim.ONE, "rad", high="1.5707963267948966")
+    yield quantity("mu", "Mach angle", n("μ"), dim.ONE, "rad", high=RIGHT_ANGLE)
     for symbol, title, base, dimension, unit, kind in (
         ("p_cr", "critical pressure, at M = 1", "p", pressure, "Pa", absolute),
         ("T_cr", "critical temperature, at M = 1", "T", dim.TEMPERATURE, "K", level),

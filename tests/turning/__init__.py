@@ -1,0 +1,1 @@
+"""Oblique shocks, expansions and sections in supersonic flow."""
