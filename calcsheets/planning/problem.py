@@ -19,6 +19,7 @@ from ..relations import (
     ending_in,
     mixture_relations,
     starting_from,
+    station_of,
 )
 from ..relations.roles import DISCHARGE, INLET, OUTLET, SUPPLY, THROUGH
 
@@ -222,6 +223,7 @@ def state_problem(brief: Brief, library: Library) -> Problem:
     ]
     for relation, place in (*_equalities(brief), *_mixture(brief)):
         instances.append(Instance(relation, place, len(library.relations)))
+    offered = {instance.key: instance for instance in instances}
     tests = [
         RegimeInstance(regime, place, rank)
         for rank, regime in enumerate(library.regimes)
@@ -230,7 +232,7 @@ def state_problem(brief: Brief, library: Library) -> Problem:
     ]
     return Problem(
         brief=brief,
-        instances=tuple(sorted(instances, key=lambda instance: instance.key)),
+        instances=tuple(offered[key] for key in sorted(offered)),
         regimes={test.variable: test for test in sorted(tests, key=lambda test: test.key)},
     )
 
@@ -251,7 +253,10 @@ def _places(brief: Brief) -> Iterator[tuple[Place, str]]:
     yield _gas_place(brief), "gas"
     yield Place("site", "site", {"": "site"}, ""), "site"
     for station in brief.stations:
-        yield _station_place(station), station.kind
+        place = _station_place(station)
+        yield place, station.kind
+        at_ends = {leg.process for leg in brief.legs if station.name in (leg.start, leg.end)}
+        yield from ((place, station_of(process)) for process in sorted(at_ends))
     legs = {leg.name: leg for leg in brief.legs}
     kinds = {station.name: station.kind for station in brief.stations}
     for leg in brief.legs:

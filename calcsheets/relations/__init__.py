@@ -12,6 +12,7 @@ from .relation import (
     Source,
     ending_in,
     starting_from,
+    station_of,
 )
 
 __all__ = [
@@ -28,4 +29,5 @@ __all__ = [
     "load_library",
     "mixture_relations",
     "starting_from",
+    "station_of",
 ]

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from ..expressions import Function, sqrt, symbols
+from .duct_flows import DUCTS, FANNO
 from .relation import Branch, Chapter, Limit, Process, Relation, ending_in
 from .roles import INLET, OUTLET
 from .sources import definition, derived, naca_1135, textbook
@@ -187,7 +188,7 @@ _PASSAGES = (
         "Adiabatic flow: one stagnation temperature",
         T_02.equals(T_01),
         textbook("First law of thermodynamics, steady adiabatic flow"),
-        (ISENTROPIC_FLOW, PASSAGE, ending_in("orifice", "stream"), *_SHOCKS, *_FANS),
+        (ISENTROPIC_FLOW, PASSAGE, ending_in("orifice", "stream"), *_SHOCKS, *_FANS, FANNO),
         assumptions=("no heat exchange and no shaft work between the stations",),
     ),
     Relation(
@@ -203,7 +204,7 @@ _PASSAGES = (
         "Steady flow: one mass flow",
         mdot_2.equals(mdot_1),
         textbook("Conservation of mass, steady flow"),
-        (ISENTROPIC_FLOW, PASSAGE, *_SHOCKS, *_FANS),
+        (ISENTROPIC_FLOW, PASSAGE, *_SHOCKS, *_FANS, *DUCTS),
         assumptions=("steady flow without branches between the stations",),
     ),
     Relation(

@@ -11,16 +11,20 @@ from types import MappingProxyType
 from ..errors import DefinitionError
 from ..expressions import expression_to_mathml
 from . import (
+    ducts,
     expansions,
+    fanno,
     isentropic,
+    isothermal_ducts,
     oblique_shocks,
     orifices,
+    rayleigh,
     shocks,
     streams,
     thermodynamics,
     vessels,
 )
-from .relation import Chapter, Process, Regime, Relation, ending_in, starting_from
+from .relation import Chapter, Process, Regime, Relation, ending_in, starting_from, station_of
 
 STATION_KINDS = ("stream", "vessel")
 
@@ -42,6 +46,7 @@ class Library:
             if names.count(name) > 1:
                 raise DefinitionError(f"relation {name}", "the name is taken twice")
         offers = {*STATION_KINDS, "gas", "site", *self.processes}
+        offers |= {station_of(process) for process in self.processes}
         for kind in STATION_KINDS:
             offers |= {starting_from(process, kind) for process in self.processes}
             offers |= {ending_in(process, kind) for process in self.processes}
@@ -108,6 +113,10 @@ def load_library() -> Library:
                 shocks,
                 oblique_shocks,
                 expansions,
+                ducts,
+                fanno,
+                isothermal_ducts,
+                rayleigh,
             )
         )
     )

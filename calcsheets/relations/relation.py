@@ -189,6 +189,11 @@ def ending_in(process: str, kind: str) -> str:
     return f"{process} into a {kind}"
 
 
+def station_of(process: str) -> str:
+    """Return the name under which the stations at either end of a process offer relations."""
+    return f"station of a {process}"
+
+
 @dataclass(frozen=True)
 class Chapter:
     """The relations of one subject.

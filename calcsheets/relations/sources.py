@@ -28,3 +28,13 @@ def derived(what: str) -> Source:
 def definition(what: str) -> Source:
     """A definition."""
     return Source(what, "", "", "common practice")
+
+
+def shapiro(clause: str) -> Source:
+    """The textbook from which the relations of ducts are usually cited."""
+    return Source(
+        "A. H. Shapiro, The Dynamics and Thermodynamics of Compressible Fluid Flow, vol. 1",
+        "1953",
+        clause,
+        "from memory",
+    )

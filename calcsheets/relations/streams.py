@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from ..expressions import PI, Constant, sqrt, symbols
 from ..quantities import REFERENCE_STATES
+from .duct_flows import DUCTS
 from .isentropic import MACH_BRANCHES
 from .relation import Chapter, Relation
 from .sources import definition, derived, naca_1135, textbook
@@ -71,7 +72,7 @@ _MASS = (
         "Area of a circle",
         A.equals(PI / 4 * d**2),
         definition("Geometry of the circle"),
-        _FLOWS,
+        (*_FLOWS, *DUCTS),
     ),
     Relation(
         "mass_flow_static",

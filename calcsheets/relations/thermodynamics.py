@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from ..expressions import MOLAR_GAS_CONSTANT, ln, symbols
+from .duct_flows import DUCTS
 from .relation import Chapter, Process, Relation
 from .roles import INLET, OUTLET
 from .sources import definition, derived, textbook
@@ -127,7 +128,7 @@ _CHANGE = (
         "Change of specific entropy from temperatures and pressures",
         ds.equals(c_p * ln(T_2 / T_1) - R * ln(p_2 / p_1)),
         textbook("Entropy of the calorically perfect gas"),
-        _CHANGES,
+        (*_CHANGES, *DUCTS),
         assumptions=(PERFECT, CONSTANT_HEATS),
     ),
     Relation(

@@ -101,7 +101,8 @@ class Combiner:
         """Whether a relation holds for one try; ``None`` where something has no value."""
         for item in derived:
             if item.variable not in trial:
-                trial[item.variable] = self._value(item.solved, item.instance, trial)
+                value = self._value(item.solved, item.instance, trial)
+                trial[item.variable] = value if _possible(item.variable, value) else None
         published = closing.relation.published
         left = self._value(published.left, closing, trial)
         right = self._value(published.right, closing, trial)
@@ -124,6 +125,14 @@ class Combiner:
         except OutsideDomainError:
             return None
         return value if value.is_finite() else None
+
+
+def _possible(variable: Variable, value: Ball | None) -> bool:
+    """Whether a value lies within the bounds of its quantity; beyond them nothing is shown."""
+    quantity = catalogue()[variable.symbol]
+    return value is not None and bool(
+        exact_ball(quantity.low) <= value <= exact_ball(quantity.high)
+    )
 
 
 def _closed_form(edge: Edge) -> _Derived | None:

@@ -2,13 +2,24 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Mapping
 from dataclasses import dataclass
 from fractions import Fraction
 
 from flint import arb
 
-from ..expressions import Condition, Number, Sum, Symbol
+from ..expressions import (
+    Condition,
+    Expr,
+    Function,
+    Negative,
+    Number,
+    Product,
+    Quotient,
+    Sum,
+    Symbol,
+)
 from ..relations import Limit, Relation
 from .balls import Ball, evaluate
 
@@ -56,11 +67,29 @@ def residual_of(relation: Relation, values: Mapping[Symbol, Ball]) -> Ball:
 
 
 def size_of(relation: Relation, values: Mapping[Symbol, Ball]) -> Ball:
-    """Return the size of what is compared: terms that are added count each, so that sides
-    that cancel to zero still have one."""
+    """Return the size of what is compared.
+
+    Terms that are added count each, wherever they stand, and a logarithm counts as one at
+    least: sides that cancel to zero still have a size.
+    """
     sides = (relation.published.left, relation.published.right)
-    terms = [term for side in sides for term in (side.terms if isinstance(side, Sum) else (side,))]
-    return sum((abs(evaluate(term, values)) for term in terms), arb(0))
+    return sum((_size(side, values) for side in sides), arb(0))
+
+
+def _size(expr: Expr, values: Mapping[Symbol, Ball]) -> Ball:
+    match expr:
+        case Sum(terms):
+            return sum((_size(term, values) for term in terms), arb(0))
+        case Negative(operand):
+            return _size(operand, values)
+        case Product(factors):
+            return math.prod((_size(factor, values) for factor in factors), start=arb(1))
+        case Quotient(numerator, denominator):
+            return _size(numerator, values) / abs(evaluate(denominator, values))
+        case Function("ln", _):
+            return 1 + abs(evaluate(expr, values))
+        case _:
+            return abs(evaluate(expr, values))
 
 
 def may_hold(condition: Condition, question: Question, value: Ball) -> bool:

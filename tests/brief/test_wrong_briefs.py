@@ -12,6 +12,7 @@ from calcsheets import calculate
 from calcsheets.brief import parse_brief, read_brief
 from calcsheets.brief.reader import LARGEST_FILE
 from calcsheets.errors import BriefError, CalcsheetsError, OutputError
+from calcsheets.relations import load_library
 
 HERE = Path(__file__).parent
 GOOD = "good.toml"
@@ -57,7 +58,12 @@ def test_there_are_enough_wrong_briefs_and_no_two_are_one() -> None:
 def test_a_wrong_brief_is_refused_with_its_message(case: dict[str, str]) -> None:
     with pytest.raises(BriefError) as refused:
         parse_brief(*text_of(case))
-    assert str(refused.value) == case["message"]
+    assert str(refused.value) == case["message"].replace("{processes}", all_processes())
+
+
+def all_processes() -> str:
+    *first, last = (f'"{name}"' for name in load_library().processes)
+    return f"{', '.join(first)} or {last}"
 
 
 @pytest.mark.parametrize("case", WRONG, ids=case_name)

@@ -37,7 +37,7 @@ def test_the_library_holds_the_scope_of_the_first_chapters() -> None:
     assert len(LIBRARY.relations) >= 45
     assert [chapter.name for chapter in LIBRARY.chapters] == [
         "thermodynamics", "isentropic", "streams", "orifices", "vessels", "shocks",
-        "oblique_shocks", "expansions",
+        "oblique_shocks", "expansions", "ducts", "fanno", "isothermal_ducts", "rayleigh",
     ]  # fmt: skip
     assert {relation.chapter for relation in LIBRARY.relations} == {
         chapter.name for chapter in LIBRARY.chapters
@@ -59,13 +59,17 @@ WITHOUT_MODEL = {
     "specific_gas_constant", "heat_ratio", "molar_heat", "specific_volume", "first_law_closed",
     "isothermal_temperature", "mach_number", "mach_angle", "dynamic_pressure_velocity",
     "volume_flow", "mass_flux", "molar_flow", "circular_area", "amount_held", "mass_discharged",
-    "mass_filled",
+    "mass_filled", "hydraulic_diameter", "duct_length", "duct_pressure_drop",
 }  # fmt: skip
 TWO_ROOTS = {
     ("area_mach", "M"), ("mass_flow_stagnation", "M"), ("unchoked_mass_flow", "p.2"),
     ("oblique_deflection", "beta"), ("oblique_largest_deflection", "beta_max"),
+    ("fanno_stagnation_pressure", "M"), ("rayleigh_temperature", "M"),
 }  # fmt: skip
-SOMETIMES_TWO_ROOTS = {("oblique_detachment", "M.1"), ("oblique_sonic_angle", "M.1")}
+SOMETIMES_TWO_ROOTS = {
+    ("oblique_detachment", "M.1"), ("oblique_sonic_angle", "M.1"), ("fanno_length", "M"),
+    ("rayleigh_stagnation_temperature", "M"), ("rayleigh_stagnation_pressure", "M"),
+}  # fmt: skip
 
 
 def test_a_model_states_its_assumptions() -> None:

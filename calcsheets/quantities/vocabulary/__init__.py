@@ -2,8 +2,8 @@
 
 from types import ModuleType
 
-from . import changes, flow, gas, states, turning, vessels
+from . import changes, ducts, flow, gas, states, turning, vessels
 
-SUBJECTS: tuple[ModuleType, ...] = (states, gas, flow, changes, vessels, turning)
+SUBJECTS: tuple[ModuleType, ...] = (states, gas, flow, changes, vessels, turning, ducts)
 
 __all__ = ["SUBJECTS"]
