@@ -245,9 +245,10 @@ class SeveralRoots(SolvingError):
     Attributes:
         relation: title of the relation.
         unknown: key of the unknown.
-        roots: each root as text, in rising order.
+        roots: each root as a number in coherent SI, in rising order.
         branches: the branch names that may be stated.
         place: where to state the branch.
+        shown: the roots in a unit of the trade, where the coherent one is not read.
     """
 
     relation: str
@@ -255,6 +256,7 @@ class SeveralRoots(SolvingError):
     roots: tuple[str, ...]
     branches: tuple[str, ...]
     place: str
+    shown: tuple[str, ...] = ()
 
     def __str__(self) -> str:
         names = " or ".join(f'branch = "{name}"' for name in self.branches)
@@ -264,7 +266,7 @@ class SeveralRoots(SolvingError):
             else f"Give {self.unknown}, or an input that decides it"
         )
         return (
-            f"{self.relation}: {self.unknown} may be {' or '.join(self.roots)}. "
+            f"{self.relation}: {self.unknown} may be {' or '.join(self.shown or self.roots)}. "
             f"Which is meant? {remedy}."
         )
 
@@ -298,16 +300,19 @@ class OutsideLimit(SolvingError):
         relation: title of the relation.
         unknown: key of the quantity that it gave.
         limit: the limit that is not met, as a clause.
+        found: the values of both sides of the limit, as a clause; empty where they say nothing.
     """
 
     relation: str
     unknown: str
     limit: str
+    found: str = ""
 
     def __str__(self) -> str:
+        found = f": {self.found}" if self.found else ""
         return (
             f"{self.relation}, for {self.unknown}: {self.limit}, and the inputs lead to values "
-            "outside that. Check the inputs of this step."
+            f"outside that{found}. Check the inputs of this step."
         )
 
 

@@ -101,6 +101,11 @@ CASES: list[tuple[CalcsheetsError, str]] = [
         "values outside that. Check the inputs of this step.",
     ),
     (
+        OutsideLimit("Oblique shock", "beta@b", "the shock detaches", "θ is 40°, allowed is 30°"),
+        "Oblique shock, for beta@b: the shock detaches, and the inputs lead to values outside "
+        "that: θ is 40°, allowed is 30°. Check the inputs of this step.",
+    ),
+    (
         ContradictoryInputs("p@a", "2 Pa", "no value", "Bernoulli", ("p@b",), float("inf")),
         "p@a is 2 Pa, but p@b leads to no value (relation: Bernoulli); with these values one of "
         "its sides has none. Remove one of these inputs, or correct it.",

@@ -3,13 +3,15 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Iterator
+from collections.abc import Callable, Iterator, Mapping
 from fractions import Fraction
 
 from flint import arb
 
-from ..errors import NoRoot, SeveralRoots, UndecidedRoots
-from ..expressions import Expr, symbols_in
+from ..errors import NoRoot, OutsideLimit, SeveralRoots, UndecidedRoots
+from ..expressions import Condition, Expr, Symbol, symbols_in
+from ..quantities import Quantity
+from ..relations import Limit, Relation
 from .balls import Ball, OutsideDomainError, evaluate, exact_ball
 from .question import Question, bounds_of, compare
 
@@ -31,7 +33,7 @@ def no_root(question: Question) -> NoRoot:
     return NoRoot(
         relation=question.relation.title,
         unknown=question.key,
-        bounds=_interval_text(low, high),
+        bounds=_bounds_text(question, low, high),
         reached=_reached(question, reached, low, high),
         asked="0" if on_both else _asked(question, asked),
         limits=tuple(_limits_missed(question)),
@@ -40,19 +42,44 @@ def no_root(question: Question) -> NoRoot:
 
 def several_roots(question: Question, roots: tuple[Ball, ...]) -> SeveralRoots:
     """Return the question which of several roots is meant."""
+    unknown = question.unknown.definition
     return SeveralRoots(
         relation=question.relation.title,
         unknown=question.key,
         roots=tuple(_text(root) for root in roots),
         branches=tuple(branch.name for branch in question.relation.branches),
         place=question.place,
+        shown=tuple(quantity_text(unknown, root) for root in roots)
+        if unknown.unit == "rad"
+        else (),
     )
 
 
 def undecided(question: Question) -> UndecidedRoots:
     """Return that the search did not come to an end."""
     low, high = bounds_of(question)
-    return UndecidedRoots(question.relation.title, question.key, _interval_text(low, high))
+    bounds = _bounds_text(question, low, high)
+    return UndecidedRoots(question.relation.title, question.key, bounds)
+
+
+def limit_missed(
+    relation: Relation, key: str, limit: Limit, values: Mapping[Symbol, Ball]
+) -> OutsideLimit:
+    """Return that an essential limit is not met, with the values of its sides."""
+    return OutsideLimit(relation.title, key, limit.reason, _sides(limit.condition, values))
+
+
+_ALLOWED = {"<=": "at most", "<": "less than", ">=": "at least", ">": "more than"}
+
+
+def _sides(condition: Condition, values: Mapping[Symbol, Ball]) -> str:
+    """What a quantity is and what it may be; nothing where no quantity alone is compared."""
+    if not isinstance(condition.left, Symbol):
+        return ""
+    compared = condition.left.definition
+    is_now = quantity_text(compared, evaluate(condition.left, values))
+    may_be = quantity_text(compared, evaluate(condition.right, values))
+    return f"{compared.title} is {is_now}, allowed is {_ALLOWED[condition.comparison]} {may_be}"
 
 
 def _limits_missed(question: Question) -> Iterator[str]:
@@ -60,7 +87,8 @@ def _limits_missed(question: Question) -> Iterator[str]:
     for limit in (*question.limits, *question.relation.limits):
         known = set(limit.condition.symbols) <= set(question.values)
         if known and compare(limit.condition, question.values) is False:
-            yield limit.reason
+            sides = _sides(limit.condition, question.values)
+            yield f"{limit.reason} ({sides})" if sides else limit.reason
 
 
 def _asked(question: Question, expr: Expr) -> str:
@@ -71,8 +99,18 @@ def _asked(question: Question, expr: Expr) -> str:
         return "no value at all"
 
 
-def _interval_text(low: Fraction, high: Fraction) -> str:
+def _bounds_text(question: Question, low: Fraction, high: Fraction) -> str:
+    of = question.unknown.definition
+    if of.unit == "rad":
+        return f"{quantity_text(of, exact_ball(low))} to {quantity_text(of, exact_ball(high))}"
     return f"{_text(exact_ball(low))} to {_text(exact_ball(high))}"
+
+
+def quantity_text(quantity: Quantity, value: Ball) -> str:
+    """Return a value with its coherent unit, angles in degrees."""
+    if quantity.unit == "rad":
+        return f"{_text(value * 180 / arb.pi())}°"
+    return _text(value) if quantity.unit == "1" else f"{_text(value)} {quantity.unit}"
 
 
 def _reached(question: Question, expr: Expr, low: Fraction, high: Fraction) -> str:

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator, Mapping
 from dataclasses import dataclass, field, replace
 
-from ..errors import NotEnoughInputs, OutsideLimit, SolvingError
+from ..errors import NoRoot, NotEnoughInputs, SolvingError
 from ..expressions import Condition, Symbol
 from ..planning import (
     Edge,
@@ -21,6 +21,7 @@ from ..relations import Limit
 from .balls import Ball, evaluate, exact_ball
 from .coupled import Combiner
 from .question import Question, compare
+from .refusals import limit_missed
 from .solve import Solution, solve
 
 _MOST_ASSUMED = 4
@@ -218,7 +219,12 @@ class Run:
         targets = [*wanted, *tests]
         targets = [*self._solved_together(reached.needed(targets)), *targets]
         edges = reached.needed(targets)
-        self.execute(edges)
+        try:
+            self.execute(edges)
+        except NoRoot as refused:
+            if not refused.limits:  # one that names other quantities may stand against it
+                self._with_limits(reached, targets, edges)
+            raise
         edges = self._with_limits(reached, targets, edges)
         return Outcome(
             self.problem,
@@ -271,7 +277,7 @@ class Run:
         if len(values) < len(bound) or not isinstance(edge.source, Instance):
             return
         if compare(limit.condition, values) is False:
-            raise OutsideLimit(edge.source.relation.title, str(edge.target), limit.reason)
+            raise limit_missed(edge.source.relation, str(edge.target), limit, values)
 
 
 def _essential_limits(edge: Edge) -> tuple[Limit, ...]:

@@ -261,8 +261,7 @@ def _against(question: Question, value: Ball) -> tuple[tuple[bool, str], ...]:
         if not may_hold(limit.condition, question, value)
     ]
     for branch in question.relation.branches:
-        mine = branch.name == question.branch and question.unknown in branch.condition.symbols
-        if mine and not may_hold(branch.condition, question, value):
+        if branch.name == question.branch and not may_hold(branch.condition, question, value):
             found.append((True, f"not on the stated branch, {branch.name}"))
     return tuple(sorted(found, key=lambda objection: not objection[0]))
 
