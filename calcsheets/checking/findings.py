@@ -66,7 +66,7 @@ def _check_step(record: Record, step: StepRecord) -> Iterator[Finding]:
     import mpmath
 
     part = f"step {step.number}"
-    operands = (*step.operands, *step.limit_operands)
+    operands = (*step.operands, *step.limit_operands, *step.dropped)
     stale = [operand.key for operand in operands if operand.value != _value_of(record, operand.key)]
     if stale:
         yield Finding(part, step.key, "failed", f"{stale[0]} is not the value of its origin")
@@ -95,7 +95,7 @@ def _check_members(
     """Each relation of a coupled set, with the values that the whole set came to."""
     import mpmath
 
-    inside = dict(values)
+    inside = {**values, **{o.symbol: mpmath.mpf(o.value) for o in step.dropped}}
     for member in step.combination:
         value = _value_of(record, member.key) if member.key else None
         if member.symbol is not None and value is not None:

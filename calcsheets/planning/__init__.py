@@ -1,12 +1,13 @@
 """Stage 5, planning: which relation gives which unknown, or exactly what is missing."""
 
 from .advice import closing_inputs
-from .coupled import Loop, loops
+from .coupled import Field, Loop
 from .problem import Instance, Member, Place, Problem, RegimeInstance, state_problem
 from .search import Edge, Reach, reach
 
 __all__ = [
     "Edge",
+    "Field",
     "Instance",
     "Loop",
     "Member",
@@ -15,7 +16,6 @@ __all__ = [
     "Reach",
     "RegimeInstance",
     "closing_inputs",
-    "loops",
     "reach",
     "state_problem",
 ]

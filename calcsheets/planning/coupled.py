@@ -12,15 +12,15 @@ such an identity is for the solving stage to find out; it has the numbers.
 from __future__ import annotations
 
 import heapq
-from collections import defaultdict
-from collections.abc import Iterable, Iterator, Mapping
+from collections import Counter, defaultdict
+from collections.abc import Iterable, Iterator, Mapping, Set
 from dataclasses import dataclass
 
 from ..quantities import Kind, Variable, catalogue
 from .problem import Instance, Problem
 from .search import Edge, Reach, offered_edges
 
-MOST_RELATIONS = 8
+MOST_RELATIONS = 14
 """A larger set than this is not looked for: nobody follows it on a sheet."""
 
 _IMAGES = (Kind.GAUGE, Kind.REFERENCE_VOLUME)
@@ -35,11 +35,14 @@ class Loop:
         torn: the unknown taken as known for the moment.
         derivation: closed forms that follow from it, each after its inputs.
         closing: the relation that all of them meet.
+        beside: other unknowns taken as known, where the loop gives one unknown in terms of
+            another.
     """
 
     torn: Variable
     derivation: tuple[Edge, ...]
     closing: Instance
+    beside: tuple[Variable, ...] = ()
 
     @property
     def size(self) -> int:
@@ -47,43 +50,25 @@ class Loop:
         return len(self.derivation) + 1
 
 
-def loops(
-    problem: Problem,
-    regimes: Mapping[Variable, str],
-    assumed: frozenset[Variable],
-    reached: Reach,
-    wanted: Iterable[Variable],
-) -> Iterator[Loop]:
-    """Yield closed sets among the relations near the wanted variables, smallest first.
-
-    Args:
-        problem: the problem.
-        regimes: outcome of each regime that is decided or assumed.
-        assumed: regimes whose outcome is assumed.
-        reached: everything that follows without coupled sets.
-        wanted: variables that do not follow.
-    """
-    field = _Field(tuple(offered_edges(problem, regimes, assumed)), reached)
-    found: list[_Ranked] = []
-    for torn in field.near(wanted):
-        if catalogue()[torn.symbol].kind in _IMAGES:
-            continue
-        found += field.loops_at(torn)
-    for _, _, _, loop in sorted(found, key=lambda item: item[:3]):
-        yield loop
-
-
 _Key = tuple[int, str, str]
 _Ranked = tuple[int, int, tuple[str, _Key], Loop]
 
 
-class _Field:
+class Field:
     """The relations that still have unknowns, and which closed forms lead from one to another."""
 
-    def __init__(self, edges: tuple[Edge, ...], reached: Reach) -> None:
+    def __init__(self, edges: Iterable[Edge], reached: Reach) -> None:
+        """Take what is still unknown.
+
+        Args:
+            edges: every way from relations to variables.
+            reached: everything that follows without coupled sets.
+        """
+        self._edges = tuple(edges)
+        self._reached = reached
         self._open: dict[_Key, tuple[Instance, tuple[Variable, ...]]] = {}
         self._closed: list[tuple[Edge, tuple[Variable, ...]]] = []
-        for edge in edges:
+        for edge in self._edges:
             if not isinstance(edge.source, Instance) or edge.target in reached:
                 continue
             inputs = tuple(item for item in edge.inputs if item not in reached)
@@ -97,6 +82,49 @@ class _Field:
             for item in inputs:
                 self._users[item].append(index)
 
+    @classmethod
+    def of(
+        cls,
+        problem: Problem,
+        regimes: Mapping[Variable, str],
+        assumed: frozenset[Variable],
+        reached: Reach,
+    ) -> Field:
+        """Return the field of a problem; see :func:`reach`."""
+        return cls(offered_edges(problem, regimes, assumed), reached)
+
+    def with_edge(self, edge: Edge) -> Field:
+        """Return the field with one more closed form."""
+        return Field((*self._edges, edge), self._reached)
+
+    def loops(self, wanted: Iterable[Variable]) -> Iterator[Loop]:
+        """Yield closed sets among the relations near the wanted variables, smallest first."""
+        found = [item for torn in self.near(wanted) for item in self._loops_at(torn, ())]
+        for _, _, _, loop in sorted(found, key=lambda item: item[:3]):
+            yield loop
+
+    def loops_at(self, torn: Variable, beside: tuple[Variable, ...] = ()) -> Iterator[Loop]:
+        """Yield the closed sets that close at one unknown, smallest first.
+
+        Args:
+            torn: the unknown.
+            beside: other unknowns to take as known; loops that close without the torn one are
+                left out.
+        """
+        without = set(self._derive(beside)[1])
+        for _, _, _, loop in sorted(self._loops_at(torn, beside), key=lambda item: item[:3]):
+            if not set(loop.closing.binding.values()) - self._reached_with(without):
+                continue
+            yield loop
+
+    def _reached_with(self, further: Set[Variable]) -> Set[Variable]:
+        return further | self._reached.known | self._reached.edges.keys()
+
+    def most_connected(self, wanted: Iterable[Variable], count: int) -> list[Variable]:
+        """Return the unknowns near the wanted ones that most relations name."""
+        uses = Counter(v for _, unknowns in self._open.values() for v in unknowns)
+        return sorted(self.near(wanted), key=lambda variable: (-uses[variable], variable))[:count]
+
     def near(self, wanted: Iterable[Variable]) -> list[Variable]:
         """Every unknown that shares relations with the wanted ones, in a total order."""
         neighbours: defaultdict[Variable, set[Variable]] = defaultdict(set)
@@ -109,11 +137,12 @@ class _Field:
             new = neighbours[open_ends.pop()] - seen
             seen |= new
             open_ends += new
-        return sorted(seen)
+        kept = (v for v in seen if catalogue()[v.symbol].kind not in _IMAGES)
+        return sorted(kept)
 
-    def loops_at(self, torn: Variable) -> Iterator[_Ranked]:
-        """Yield the loops that close when one unknown is torn, with what ranks them."""
-        derived, behind = self._derive(torn)
+    def _loops_at(self, torn: Variable, beside: tuple[Variable, ...]) -> Iterator[_Ranked]:
+        """Yield the loops that close when unknowns are torn, with what ranks them."""
+        derived, behind = self._derive((torn, *beside))
         bits = {edge.source.key: 1 << index for index, edge in enumerate(derived.values())}
         for instance, unknowns in self._open.values():
             if not all(item in behind for item in unknowns):
@@ -125,16 +154,18 @@ class _Field:
                 continue
             steps = tuple(edge for i, edge in enumerate(derived.values()) if union >> i & 1)
             empirical = sum(edge.cost[1] for edge in steps) + int(instance.relation.empirical)
-            loop = Loop(torn, steps, instance)
+            loop = Loop(torn, steps, instance, beside)
             yield loop.size, empirical, (str(torn), instance.key), loop
 
-    def _derive(self, torn: Variable) -> tuple[dict[Variable, Edge], dict[Variable, int]]:
-        """What follows from one unknown by the fewest closed forms, and what stands behind it.
+    def _derive(
+        self, torn: tuple[Variable, ...]
+    ) -> tuple[dict[Variable, Edge], dict[Variable, int]]:
+        """What follows from some unknowns by the fewest closed forms, and what stands behind it.
 
         What stands behind a variable is kept as bits in the order of derivation.
         """
         derived: dict[Variable, Edge] = {}
-        behind = {torn: 0}
+        behind = dict.fromkeys(torn, 0)
         waiting = [len(inputs) for _, inputs in self._closed]
         heap: list[tuple[int, _Key, str, int]] = []
 
@@ -149,7 +180,8 @@ class _Field:
                     cost = union.bit_count()
                     heapq.heappush(heap, (cost, edge.source.key, str(edge.target), index))
 
-        reached_now(torn)
+        for variable in torn:
+            reached_now(variable)
         while heap:
             cost, _, _, index = heapq.heappop(heap)
             edge, inputs = self._closed[index]

@@ -62,6 +62,7 @@ class Instance:
         rank: position of the relation in the library; of two equal ways the first is taken.
         members: the relations that it combines, where it is a coupled set.
         limits: what a solution of a coupled set must meet besides.
+        dropped: unknowns that stand in members of a coupled set and drop out of it.
     """
 
     relation: Relation
@@ -69,6 +70,7 @@ class Instance:
     rank: int
     members: tuple[Member, ...] = ()
     limits: tuple[Limit, ...] = ()
+    dropped: tuple[tuple[Symbol, Variable], ...] = ()
 
     @cached_property
     def binding(self) -> Mapping[Symbol, Variable]:

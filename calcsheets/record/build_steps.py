@@ -110,6 +110,7 @@ class StepRecords:
             alternatives=tuple(self._alternatives(source, step)),
             test=None,
             combination=tuple(self._members(source)),
+            dropped=self._operands(source, (s for s, v in source.dropped if v in self.where), None),
         )
 
     def _regime_step(self, step: StepOutcome, source: RegimeInstance) -> StepRecord:
@@ -155,6 +156,7 @@ class StepRecords:
                 assumed=found.assumed,
             ),
             combination=(),
+            dropped=(),
         )
 
     def _tables(self, source: Instance, tables: tuple[Table, ...]) -> tuple[IntegralRecord, ...]:

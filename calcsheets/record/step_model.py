@@ -262,6 +262,7 @@ class StepRecord:
         alternatives: the same quantity in other regimes.
         test: the regime test; ``None`` for a relation.
         combination: the relations that are solved together, where the step is a coupled set.
+        dropped: quantities that stand in these relations and drop out of what is inserted.
     """
 
     number: int
@@ -293,6 +294,7 @@ class StepRecord:
     alternatives: tuple[AlternativeRecord, ...]
     test: RegimeTest | None
     combination: tuple[MemberRecord, ...]
+    dropped: tuple[Operand, ...]
 
     @property
     def within_limits(self) -> bool:

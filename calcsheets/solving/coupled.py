@@ -1,46 +1,35 @@
-"""A coupled set as one relation: closed forms inserted into the relation that closes the loop."""
+"""Which of the loops that planning offers determines something, as one edge.
+
+Where no loop torn at one unknown does, two are torn: a loop that gives the second in terms of
+the first in closed form serves as one more closed form, and a loop from which the second drops
+out gives the first.
+"""
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Iterator, Mapping
-from dataclasses import dataclass, replace
+from collections.abc import Callable, Iterator, Mapping
 from fractions import Fraction
-from itertools import pairwise
+from itertools import islice, pairwise
 
 from flint import arb
 
-from ..expressions import (
-    Condition,
-    Equation,
-    Expr,
-    Number,
-    Symbol,
-    integrals_in,
-    substitute,
-    symbols_in,
-)
-from ..planning import Edge, Instance, Loop, Member, Place, Problem
+from ..expressions import Expr, integrals_in, symbols_in
+from ..planning import Edge, Field, Instance, Loop, Problem
 from ..quantities import Variable, catalogue
-from ..relations import Branch, Limit, Relation, Source
 from .balls import Ball, OutsideDomainError, evaluate, exact_ball, midpoint
+from .combination import Combination, Derived
 from .moves import isolate
+
+Ready = Callable[[Loop], bool]
 
 _FACTORS = tuple(Fraction(text) for text in ("0.83", "1.21", "0.47", "2.3", "0.11", "9.7"))
 _PARTS = (Fraction(37, 100), Fraction(81, 100))
 _POWERS = (0, -1, 1, -2, 2, 3, 4, 5, -3, -4, 6)
 _LEAST_DECIDING = 3
+_MOST_TORN = 12
+_MOST_LOOPS = 30
+_MOST_TRIES = 24
 _SAME = arb(2) ** -80
-_SOURCE = Source("Elimination from the relations named", "", "", "common practice")
-
-
-@dataclass(frozen=True)
-class _Derived:
-    """One closed form of a loop: the variable, its relation, and the form in its own symbols."""
-
-    variable: Variable
-    instance: Instance
-    symbol: Symbol
-    solved: Expr
 
 
 class Combiner:
@@ -78,27 +67,101 @@ class Combiner:
         closed = tuple(item for item in derived if item is not None)
         if len(closed) < len(derived) or self._is_identity(loop, closed):
             return None
-        return _Combination(self._problem, loop, closed).edge(self._assumed)
+        return Combination(self._problem, loop, closed, loop.torn).edge(self._assumed)
 
-    def _is_identity(self, loop: Loop, derived: tuple[_Derived, ...]) -> bool:
+    def nested(self, field: Field, wanted: list[Variable], ready: Ready) -> Edge | None:
+        """Return a set that needs two torn unknowns as one edge; ``None`` if there is none.
+
+        Args:
+            field: the relations that still have unknowns.
+            wanted: variables that do not follow.
+            ready: makes the known values of a loop available; whether it could.
+        """
+        candidates = field.most_connected(wanted, _MOST_TORN)
+        for first in candidates:
+            for second in candidates:
+                if second == first:
+                    continue
+                edge = self._torn_at_two(field, first, second, ready)
+                if edge is not None:
+                    return edge
+        return None
+
+    def _torn_at_two(
+        self, field: Field, first: Variable, second: Variable, ready: Ready
+    ) -> Edge | None:
+        for loop in islice(field.loops_at(second, (first,)), _MOST_LOOPS):
+            derived = tuple(_closed_form(edge) for edge in loop.derivation)
+            closed = tuple(item for item in derived if item is not None)
+            if len(closed) < len(derived) or not ready(loop):
+                continue
+            match self._role_of(loop, closed):
+                case "drops out":
+                    found = Combination(self._problem, loop, closed, first, cancelled=second)
+                    edge = found.edge(self._assumed)
+                    if edge is not None:
+                        return edge
+                case "decides":
+                    inner = Combination(self._problem, loop, closed, second).edge(self._assumed)
+                    if inner is not None and _closed_form(inner) is not None:
+                        edge = self._closed_by(field, first, inner, ready)
+                        if edge is not None:
+                            return edge
+        return None
+
+    def _closed_by(self, field: Field, first: Variable, inner: Edge, ready: Ready) -> Edge | None:
+        """The set that the first unknown closes once the second follows from it."""
+        for loop in islice(field.with_edge(inner).loops_at(first), _MOST_LOOPS):
+            if inner in loop.derivation and ready(loop):
+                edge = self.edge(loop)
+                if edge is not None:
+                    return edge
+        return None
+
+    def _role_of(self, loop: Loop, derived: tuple[Derived, ...]) -> str:
+        """What the torn unknown does in a loop beside another: ``decides``, ``drops out``.
+
+        Empty where the closing relation is an identity, or nothing can be said.
+        """
+        (beside,) = loop.beside
+        for other in islice(_tries(beside, self._values), _MOST_TRIES):
+            ratios = []
+            for at in islice(_tries(loop.torn, self._values), _MOST_TRIES):
+                trial: dict[Variable, Ball | None] = {beside: other, loop.torn: at}
+                sides = self._sides(loop.closing, derived, trial)
+                if sides is not None and not sides[1].contains(0):
+                    ratios.append(sides[0] / sides[1])
+                if len(ratios) == _LEAST_DECIDING:
+                    break
+            if len(ratios) < _LEAST_DECIDING:
+                continue
+            if any(abs(ratio / ratios[0] - 1) > _SAME for ratio in ratios[1:]):
+                return "decides"
+            return "" if not abs(ratios[0] - 1) > _SAME else "drops out"
+        return ""
+
+    def _is_identity(self, loop: Loop, derived: tuple[Derived, ...]) -> bool:
         """Whether the closing relation holds whatever the torn unknown is, as far as tried."""
         held = 0
         if loop.torn not in self._trials:
             tries = _tries(loop.torn, self._values)
             self._trials[loop.torn] = tuple({loop.torn: at} for at in tries)
         for trial in self._trials[loop.torn]:
-            holds = self._holds(loop.closing, derived, trial)
-            if holds is False:
+            sides = self._sides(loop.closing, derived, trial)
+            if sides is None:
+                continue
+            left, right = sides
+            if abs(left - right) > (abs(left) + abs(right)) * _SAME:
                 return False
-            held += holds is True
+            held += 1
             if held == _LEAST_DECIDING:
                 return True
         return True  # nothing shows that it determines anything
 
-    def _holds(
-        self, closing: Instance, derived: tuple[_Derived, ...], trial: dict[Variable, Ball | None]
-    ) -> bool | None:
-        """Whether a relation holds for one try; ``None`` where something has no value."""
+    def _sides(
+        self, closing: Instance, derived: tuple[Derived, ...], trial: dict[Variable, Ball | None]
+    ) -> tuple[Ball, Ball] | None:
+        """Both sides of a relation for one try; ``None`` where something has no value."""
         for item in derived:
             if item.variable not in trial:
                 value = self._value(item.solved, item.instance, trial)
@@ -106,9 +169,7 @@ class Combiner:
         published = closing.relation.published
         left = self._value(published.left, closing, trial)
         right = self._value(published.right, closing, trial)
-        if left is None or right is None:
-            return None
-        return not abs(left - right) > (abs(left) + abs(right)) * _SAME
+        return None if left is None or right is None else (left, right)
 
     def _value(
         self, expr: Expr, instance: Instance, trial: Mapping[Variable, Ball | None]
@@ -135,13 +196,13 @@ def _possible(variable: Variable, value: Ball | None) -> bool:
     )
 
 
-def _closed_form(edge: Edge) -> _Derived | None:
+def _closed_form(edge: Edge) -> Derived | None:
     if not isinstance(edge.source, Instance) or edge.unknown is None:
         return None
     isolation = isolate(edge.source.relation.published, edge.unknown)
     if isolation is None or any(integrals_in(isolation.solved)):
         return None  # an integral must not come to stand within another
-    return _Derived(edge.target, edge.source, edge.unknown, isolation.solved)
+    return Derived(edge.target, edge.source, edge.unknown, isolation.solved)
 
 
 def _tries(variable: Variable, values: Mapping[Variable, Ball]) -> Iterator[Ball]:
@@ -160,174 +221,3 @@ def _tries(variable: Variable, values: Mapping[Variable, Ball]) -> Iterator[Ball
     for value in (*between, *around, *magnitudes):
         if low < value < high:
             yield value
-
-
-@dataclass(frozen=True)
-class _Combination:
-    """Writes the relations of a loop in common symbols, and one into the other."""
-
-    problem: Problem
-    loop: Loop
-    derived: tuple[_Derived, ...]
-
-    def edge(self, assumed: frozenset[Variable]) -> Edge:
-        members, expressions = self._members()
-        closing = self.loop.closing
-        names = self._names
-        published = self._inserted(closing.relation.published, closing, expressions)
-        torn = names[self.loop.torn]
-        relation = Relation(
-            name=f"combination for {self.loop.torn}",
-            title=self._title(),
-            published=published,
-            source=_SOURCE,
-            offered_by=("combination",),
-            limits=tuple(self._limits(closing, expressions)),
-            branches=tuple(self._branches(torn)),
-            empirical=any(m.instance.relation.empirical for m in members),
-            chapter="combination",
-        )
-        place = Place(
-            name="combination",
-            title=" and ".join(self._titles()),
-            roles={"": self._only_place(), **{r: p for p, r in self._roles.items() if r}},
-            branch="",
-        )
-        source = Instance(
-            relation,
-            place,
-            closing.rank,
-            members,
-            tuple(self._demands(expressions)),
-        )
-        regimes = tuple(v for v, _ in source.regimes if v not in assumed)
-        inputs = [v for v in source.binding.values() if v != self.loop.torn]
-        cost = (1, int(relation.empirical), len(members))
-        return Edge(self.loop.torn, tuple(dict.fromkeys((*inputs, *regimes))), source, torn, cost)
-
-    def _members(self) -> tuple[tuple[Member, ...], dict[Variable, Expr]]:
-        names = self._names
-        expressions: dict[Variable, Expr] = {}
-        members = []
-        for item in self.derived:
-            own = {s: names[v] for s, v in item.instance.binding.items()}
-            solved = substitute(item.solved, own)
-            published = item.instance.relation.published
-            shown = Equation(substitute(published.left, own), substitute(published.right, own))
-            members.append(
-                Member(item.instance, item.variable, names[item.variable], shown, solved)
-            )
-            inner = {names[v]: e for v, e in expressions.items()}
-            expressions[item.variable] = substitute(solved, inner)
-        closing = self.loop.closing
-        own = {s: names[v] for s, v in closing.binding.items()}
-        published = closing.relation.published
-        shown = Equation(substitute(published.left, own), substitute(published.right, own))
-        members.append(Member(closing, None, None, shown, None))
-        return tuple(members), expressions
-
-    def _inserted(
-        self, equation: Equation, instance: Instance, expressions: Mapping[Variable, Expr]
-    ) -> Equation:
-        inside = self._inside(instance, equation.symbols, expressions)
-        return Equation(substitute(equation.left, inside), substitute(equation.right, inside))
-
-    def _inside(
-        self, instance: Instance, symbols: Iterable[Symbol], expressions: Mapping[Variable, Expr]
-    ) -> dict[Symbol, Expr]:
-        bound = instance.place.variables(symbols)
-        return {
-            symbol: expressions.get(variable, self._names.get(variable, symbol))
-            for symbol, variable in bound.items()
-        }
-
-    def _limits(self, closing: Instance, expressions: Mapping[Variable, Expr]) -> Iterator[Limit]:
-        for limit in closing.relation.limits:
-            condition = self._condition(closing, limit.condition, expressions)
-            if condition is not None:
-                yield replace(limit, condition=condition)
-
-    def _demands(self, expressions: Mapping[Variable, Expr]) -> Iterator[Limit]:
-        """Bounds, limits and branches of what was eliminated."""
-        for variable, expr in expressions.items():
-            quantity = catalogue()[variable.symbol]
-            low, high = Number(quantity.low), Number(quantity.high)
-            open_end = quantity.low == 0 and not quantity.zero
-            reason = f"{variable} would lie outside its bounds"
-            yield Limit(Condition(expr, ">" if open_end else ">=", low), reason, True)
-            yield Limit(Condition(expr, "<=", high), reason, True)
-            for limit in self.problem.demands.get(variable, ()):
-                yield replace(limit, condition=replace(limit.condition, left=expr))
-            stated = self.problem.branch_at(variable.place)
-            for branch in self.problem.branches.get(variable, ()):
-                if branch.name == stated:
-                    reason = f"{variable} would not lie on the stated branch, {stated}"
-                    yield Limit(replace(branch.condition, left=expr), reason, True)
-        for item in self.derived:
-            for limit in item.instance.relation.limits:
-                condition = self._condition(item.instance, limit.condition, expressions)
-                if condition is not None:
-                    yield replace(limit, condition=condition)
-
-    def _condition(
-        self, instance: Instance, condition: Condition, expressions: Mapping[Variable, Expr]
-    ) -> Condition | None:
-        """A condition in the symbols of the set; ``None`` if it names what the set does not."""
-        bound = instance.place.variables(condition.symbols)
-        if not all(variable in self._names for variable in bound.values()):
-            return None
-        inside = self._inside(instance, condition.symbols, expressions)
-        return Condition(
-            substitute(condition.left, inside),
-            condition.comparison,
-            substitute(condition.right, inside),
-        )
-
-    def _branches(self, torn: Symbol) -> Iterator[Branch]:
-        """Branches of the torn unknown itself."""
-        for branch in self.problem.branches.get(self.loop.torn, ()):
-            yield replace(branch, condition=replace(branch.condition, left=torn))
-
-    @property
-    def _instances(self) -> tuple[Instance, ...]:
-        return (*(item.instance for item in self.derived), self.loop.closing)
-
-    def _title(self) -> str:
-        titles = dict.fromkeys(instance.relation.title for instance in self._instances)
-        return f"Solved together: {'; '.join(titles)}"
-
-    def _titles(self) -> tuple[str, ...]:
-        return tuple(dict.fromkeys(instance.place.title for instance in self._instances))
-
-    @property
-    def _roles(self) -> dict[str, str]:
-        """The role of each place: numbers where there are several, its own name for others."""
-        brief = self.problem.brief
-        path = [name for leg in brief.legs for name in (leg.start, leg.name, leg.end)]
-        path += [station.name for station in brief.stations]
-        variables = [v for instance in self._instances for v in instance.binding.values()]
-        places = {v.place for v in variables if self._numbered(v)}
-        places |= {v.place for i in self._instances for v, _ in i.regimes}
-        ordered = [place for place in dict.fromkeys(path) if place in places]
-        if len(ordered) == 1:
-            return {ordered[0]: ""}
-        return {place: str(number) for number, place in enumerate(ordered, start=1)}
-
-    def _only_place(self) -> str:
-        return next((place for place, role in self._roles.items() if role == ""), "combination")
-
-    @staticmethod
-    def _numbered(variable: Variable) -> bool:
-        return variable.place != catalogue()[variable.symbol].home
-
-    @property
-    def _names(self) -> dict[Variable, Symbol]:
-        """The symbol of each variable of the set."""
-        roles = self._roles
-        variables = [v for instance in self._instances for v in instance.binding.values()]
-        return {
-            variable: Symbol(variable.symbol, roles.get(variable.place, variable.place))
-            if self._numbered(variable)
-            else Symbol(variable.symbol)
-            for variable in variables
-        }

@@ -40,6 +40,15 @@ def no_root(question: Question) -> NoRoot:
     )
 
 
+def outside_limit(question: Question) -> OutsideLimit | None:
+    """Return the limit that the known values alone miss, if one that means something is."""
+    for limit in question.relation.limits:
+        known = set(limit.condition.symbols) <= set(question.values)
+        if limit.essential and known and compare(limit.condition, question.values) is False:
+            return limit_missed(question.relation, question.key, limit, question.values)
+    return None
+
+
 def several_roots(question: Question, roots: tuple[Ball, ...]) -> SeveralRoots:
     """Return the question which of several roots is meant."""
     unknown = question.unknown.definition

@@ -5,15 +5,16 @@ from __future__ import annotations
 from collections.abc import Iterator, Mapping
 from dataclasses import dataclass, field, replace
 
-from ..errors import NoRoot, NotEnoughInputs, SolvingError
+from ..errors import NoRoot, NotEnoughInputs, SeveralRoots, SolvingError
 from ..expressions import Condition, Symbol
 from ..planning import (
     Edge,
+    Field,
     Instance,
+    Loop,
     Problem,
     Reach,
     RegimeInstance,
-    loops,
     reach,
 )
 from ..quantities import Variable
@@ -89,6 +90,8 @@ class Run:
     regimes: dict[Variable, str] = field(default_factory=dict)
     solved: dict[Variable, StepOutcome] = field(default_factory=dict)
     coupled: list[Edge] = field(default_factory=list)
+    unsolved: set[Variable] = field(default_factory=set)
+    questions: list[SeveralRoots] = field(default_factory=list)
 
     def __post_init__(self) -> None:
         self.regimes.update(self.assumed)
@@ -126,17 +129,37 @@ class Run:
             return None
         assumed = frozenset(self.assumed)
         combiner = Combiner(self.problem, self.values, assumed)
-        for loop in loops(self.problem, self.regimes, assumed, reached, missing):
-            needed = {v for edge in loop.derivation for v in edge.inputs}
-            needed |= set(loop.closing.binding.values())
-            try:
-                self.execute(reached.needed(sorted(v for v in needed if v in reached.edges)))
-            except SolvingError:
-                continue
-            edge = combiner.edge(loop)
+        field = Field.of(self.problem, self.regimes, assumed, reached)
+
+        def ready(loop: Loop) -> bool:
+            return self._prepare(reached, loop)
+
+        for loop in field.loops(missing):
+            edge = combiner.edge(loop) if ready(loop) else None
             if edge is not None and all(item in reached for item in edge.inputs):
                 return edge
+        edge = combiner.nested(field, missing, ready)
+        if edge is not None and all(item in reached for item in edge.inputs):
+            return edge
+        if self.questions:
+            raise self.questions[0]  # with one of its roots a set may close
         return None
+
+    def _prepare(self, reached: Reach, loop: Loop) -> bool:
+        """Solve what the relations of a loop know already; whether that was possible."""
+        needed = {v for edge in loop.derivation for v in edge.inputs}
+        needed |= set(loop.closing.binding.values())
+        edges = reached.needed(sorted(v for v in needed if v in reached.edges))
+        if any(edge.target in self.unsolved for edge in edges):
+            return False
+        try:
+            self.execute(edges)
+        except SeveralRoots as question:
+            self.questions.append(question)
+            return False
+        except SolvingError:
+            return False
+        return True
 
     def _decide(self, reached: Reach, variable: Variable) -> None:
         try:
@@ -152,7 +175,7 @@ class Run:
             if isinstance(edge.source, RegimeInstance):
                 outcome = StepOutcome(edge, None, self._test(edge.source))
             else:
-                outcome = StepOutcome(edge, self._solve(edge, edge.source), None)
+                outcome = StepOutcome(edge, self._try(edge, edge.source), None)
             self.solved[edge.target] = outcome
 
     def _test(self, source: RegimeInstance) -> RegimeOutcome:
@@ -169,6 +192,13 @@ class Run:
             regime=regime,
             assumed=source.variable in self.assumed,
         )
+
+    def _try(self, edge: Edge, source: Instance) -> Solution:
+        try:
+            return self._solve(edge, source)
+        except SolvingError:
+            self.unsolved.add(edge.target)
+            raise
 
     def _solve(self, edge: Edge, source: Instance) -> Solution:
         unknown = edge.unknown
@@ -237,13 +267,13 @@ class Run:
     def _solved_together(self, edges: tuple[Edge, ...]) -> list[Variable]:
         """Every unknown of the coupled sets among some edges, so that all of a set is shown."""
         needed = {edge.target for edge in edges}
-        return [
-            variable
-            for edge in self.coupled
-            if edge.target in needed and isinstance(edge.source, Instance)
-            for variable in (edge.target, *(m.gives for m in edge.source.members))
-            if variable is not None
-        ]
+        found: list[Variable] = []
+        for edge in self.coupled:
+            if edge.target in needed and isinstance(edge.source, Instance):
+                gives = (member.gives for member in edge.source.members)
+                dropped = (variable for _, variable in edge.source.dropped)
+                found += [edge.target, *(v for v in gives if v is not None), *dropped]
+        return found
 
     def _with_limits(
         self, reached: Reach, targets: list[Variable], edges: tuple[Edge, ...]

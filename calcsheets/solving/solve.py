@@ -17,7 +17,7 @@ from .moves import Move, isolate
 from .polynomials import polynomial_form
 from .quadrature import Table, tables_of
 from .question import Question, bounds_of, may_hold, residual_of, size_of
-from .refusals import no_root, several_roots, undecided
+from .refusals import no_root, outside_limit, several_roots, undecided
 from .roots import TooManyCellsError, isolate_roots
 from .taylor import taylor_form
 
@@ -250,7 +250,7 @@ def _choose(question: Question, roots: tuple[Ball, ...]) -> tuple[Ball, tuple[Ot
                 if index != chosen
             )
             return roots[chosen], tuple(others)
-    raise no_root(question)
+    raise (outside_limit(question) if roots else None) or no_root(question)
 
 
 def _against(question: Question, value: Ball) -> tuple[tuple[bool, str], ...]:

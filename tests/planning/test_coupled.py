@@ -8,7 +8,7 @@ from pathlib import Path
 import pytest
 
 import calcsheets
-from calcsheets.planning import Loop, Problem, loops, reach, state_problem
+from calcsheets.planning import Field, Loop, Problem, reach, state_problem
 from calcsheets.planning.coupled import MOST_RELATIONS
 from calcsheets.quantities import Kind, Variable, catalogue
 from calcsheets.relations import load_library
@@ -26,7 +26,7 @@ def problem(tmp_path: Path) -> Problem:
 
 
 def offered(problem: Problem) -> list[Loop]:
-    return list(loops(problem, {}, frozenset(), reach(problem, {}), [MACH]))
+    return list(Field.of(problem, {}, frozenset(), reach(problem, {})).loops([MACH]))
 
 
 def test_smaller_sets_come_first_and_none_is_larger_than_anyone_would_follow(
