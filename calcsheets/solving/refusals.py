@@ -93,7 +93,7 @@ def _sides(condition: Condition, values: Mapping[Symbol, Ball]) -> str:
 
 def _limits_missed(question: Question) -> Iterator[str]:
     """Reasons of the limits that the known values alone already miss."""
-    for limit in (*question.limits, *question.relation.limits):
+    for limit in question.relation.limits:
         known = set(limit.condition.symbols) <= set(question.values)
         if known and compare(limit.condition, question.values) is False:
             sides = _sides(limit.condition, question.values)
