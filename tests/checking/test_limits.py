@@ -131,7 +131,8 @@ def test_no_value_is_given_where_a_relation_means_nothing(tmp_path: Path) -> Non
         calculated(tmp_path, 'M = "0.5"\nA = "0.01 m2"', "", '"A@b" = { unit = "m2" }')
     assert str(caught.value) == (
         "A shock is thin: one area, for A@b: a shock stands only in supersonic flow, and the "
-        "inputs lead to values outside that. Check the inputs of this step."
+        "inputs lead to values outside that: Mach number is 0.5, allowed is at least 1. Check "
+        "the inputs of this step."
     )
 
 
