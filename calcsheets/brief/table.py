@@ -14,6 +14,7 @@ from ..quantities import Kind, Measured, catalogue, read_measured
 from .form import DATE_PATTERN, KEY_PATTERN, NAME_PATTERN, Key, Keys
 from .lines import Path, line_of
 
+MOST_CHOICES = 14
 LONGEST_TEXT = 2000
 MOST_DIGITS = 12
 _MOST_SHOWN = 12
@@ -82,7 +83,7 @@ class Table:
             self.refuse(
                 key.name,
                 f'"{value}" is not one of the choices',
-                f"{hint}Choose {either(key.choices)}",
+                f"{hint}{_to_choose(key.choices)}",
             )
         pattern, example = _PATTERNS.get(key.what, ("", ""))
         if pattern and not re.fullmatch(pattern, value):
@@ -183,6 +184,13 @@ def either(choices: Iterable[str]) -> str:
     """Return choices as text in quotation marks, such as ``"a", "b" or "c"``."""
     quoted = [f'"{choice}"' for choice in choices]
     return f"{', '.join(quoted[:-1])} or {quoted[-1]}" if len(quoted) > 1 else quoted[0]
+
+
+def _to_choose(choices: tuple[str, ...]) -> str:
+    """What to do about a wrong choice; a long list would hide the sentence."""
+    if len(choices) > MOST_CHOICES:
+        return f"The {len(choices)} choices are listed in docs/brief.md"
+    return f"Choose {either(choices)}"
 
 
 def visible(text: str) -> str:

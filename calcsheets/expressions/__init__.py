@@ -1,11 +1,11 @@
 """Expressions in published order, and what can be asked of them without solving anything."""
 
 from .algebra import equation_to_sympy, to_sympy
+from .constants import CONSTANTS, decimal_text
 from .content_mathml import expression_from_mathml, expression_to_mathml
 from .derivative import derivative
 from .dimensions import dimension_of
 from .tree import (
-    CONSTANTS,
     MOLAR_GAS_CONSTANT,
     PI,
     Condition,
@@ -25,7 +25,6 @@ from .tree import (
     as_expr,
     children,
     constants_in,
-    decimal_text,
     exp,
     integrals_in,
     ln,

@@ -5,8 +5,8 @@ from __future__ import annotations
 from typing import Any
 
 from ..errors import DefinitionError
+from .constants import CONSTANTS
 from .tree import (
-    CONSTANTS,
     Constant,
     Equation,
     Expr,

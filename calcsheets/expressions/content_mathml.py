@@ -10,8 +10,8 @@ from fractions import Fraction
 from xml.etree import ElementTree as ET
 
 from ..errors import DefinitionError
+from .constants import CONSTANTS, decimal_text
 from .tree import (
-    CONSTANTS,
     FUNCTIONS,
     Condition,
     Constant,
@@ -27,7 +27,6 @@ from .tree import (
     Root,
     Sum,
     Symbol,
-    decimal_text,
 )
 
 _LONGEST = 100_000

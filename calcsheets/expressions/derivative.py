@@ -72,7 +72,9 @@ def _power_rule(power: Expr, base: Expr, exponent: Expr, variable: Symbol) -> Ex
     in_exponent = derivative(exponent, variable)
     terms: list[Expr] = []
     if in_base != _ZERO:
-        terms.append(exponent * base ** (exponent - 1) * in_base)
+        # A whole exponent stays one: its base may be negative.
+        less = Number(exponent.value - 1) if isinstance(exponent, Number) else exponent - 1
+        terms.append(exponent * base**less * in_base)
     if in_exponent != _ZERO:
         terms.append(power * Function("ln", base) * in_exponent)
     return _sum(tuple(terms))

@@ -7,8 +7,8 @@ from fractions import Fraction
 from ..errors import DefinitionError
 from ..quantities import Dimension
 from ..quantities.dimension import ONE
+from .constants import CONSTANTS
 from .tree import (
-    CONSTANTS,
     Constant,
     Expr,
     Function,

@@ -13,12 +13,9 @@ from __future__ import annotations
 from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
 from fractions import Fraction
-from functools import cached_property
-from types import MappingProxyType
 
 from ..errors import DefinitionError
-from ..quantities import REFERENCE_STATES, Dimension, Quantity, catalogue
-from ..quantities.dimension import MOLAR_HEAT, ONE, PRESSURE, TEMPERATURE
+from ..quantities import Quantity, catalogue
 
 Plain = int | Fraction
 
@@ -230,83 +227,6 @@ class Condition:
         return tuple(dict.fromkeys((*symbols_in(self.left), *symbols_in(self.right))))
 
 
-@dataclass(frozen=True)
-class ConstantDefinition:
-    """A constant with its source.
-
-    Attributes:
-        name: name in expressions.
-        title: the constant in words.
-        value: exact value in coherent SI; ``None`` for π.
-        dimension: its dimension.
-        base: letter for printing.
-        subscript: subscript for printing.
-        source: where the value is laid down.
-        known: how we know it.
-    """
-
-    name: str
-    title: str
-    value: Fraction | None
-    dimension: Dimension
-    base: str
-    subscript: str
-    source: str
-    known: str
-
-    @cached_property
-    def text(self) -> str:
-        """The exact value as text; ``π`` for π."""
-        return "π" if self.value is None else decimal_text(self.value)
-
-
-def _constants() -> Mapping[str, ConstantDefinition]:
-    definitions = [
-        ConstantDefinition(
-            "pi",
-            "ratio of circumference to diameter",
-            None,
-            ONE,
-            "π",
-            "",
-            "mathematics",
-            "common practice",
-        ),
-        ConstantDefinition(
-            "R_u",
-            "molar gas constant",
-            Fraction("8.31446261815324"),
-            MOLAR_HEAT,
-            "R",
-            "u",
-            "CODATA 2018 and 2022, exact by the SI of 2019",
-            "library",
-        ),
-    ]
-    for state in REFERENCE_STATES:
-        for letter, value, dimension, word in (
-            ("T", state.temperature, TEMPERATURE, "temperature"),
-            ("p", state.pressure, PRESSURE, "pressure"),
-        ):
-            if value is not None:
-                definitions.append(
-                    ConstantDefinition(
-                        f"{letter}_{state.name}",
-                        f"{word} of the reference state {state.title}",
-                        value,
-                        dimension,
-                        letter,
-                        state.name,
-                        state.source,
-                        state.known,
-                    )
-                )
-    return MappingProxyType({definition.name: definition for definition in definitions})
-
-
-CONSTANTS: Mapping[str, ConstantDefinition] = _constants()
-
-
 def as_expr(value: Expr | Plain) -> Expr:
     """Return an expression; whole numbers and fractions become exact numbers."""
     if isinstance(value, Expr):
@@ -425,24 +345,6 @@ def _rebuilt(expr: Expr, parts: tuple[Expr, ...]) -> Expr:
             return Integral(integrand, variable, low, high)
         case _:
             return expr
-
-
-def decimal_text(value: Fraction) -> str:
-    """Return a finite decimal as text, or numerator/denominator where there is none."""
-    denominator = value.denominator
-    digits = 0
-    while denominator % 10 == 0 or denominator % 5 == 0 or denominator % 2 == 0:
-        denominator = denominator // (
-            10 if denominator % 10 == 0 else 5 if denominator % 5 == 0 else 2
-        )
-        digits += 1
-    if denominator != 1:
-        return f"{value.numerator}/{value.denominator}"
-    scaled = value * 10**digits
-    text = f"{abs(scaled.numerator):0{digits + 1}d}"
-    whole, decimals = (text[:-digits], text[-digits:].rstrip("0")) if digits else (text, "")
-    sign = "-" if value < 0 else ""
-    return f"{sign}{whole}.{decimals}" if decimals else f"{sign}{whole}"
 
 
 def _nodes(expr: Expr) -> Iterator[Expr]:

@@ -12,7 +12,8 @@ from .measured import (
 )
 from .quantity import Kind, Notation, Quantity, Variable
 from .reference_states import REFERENCE_STATES, ReferenceState
-from .units import Unit, all_units, units_by_name
+from .unit import Unit
+from .units import all_units, units_by_name
 
 __all__ = [
     "BAROMETRIC",

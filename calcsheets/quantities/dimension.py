@@ -68,3 +68,6 @@ SPECIFIC_ENERGY = dimension(m=2, s=-2)
 SPECIFIC_HEAT = dimension(m=2, s=-2, K=-1)
 MOLAR_MASS = dimension(kg=1, mol=-1)
 MOLAR_HEAT = dimension(kg=1, m=2, s=-2, K=-1, mol=-1)
+PER_TEMPERATURE = dimension(K=-1)
+COOLING = TEMPERATURE / PRESSURE
+CONDUCTANCE = VOLUME_FLOW / PRESSURE

@@ -11,7 +11,8 @@ from . import dimension as dim
 from .dimension import Dimension
 from .quantity import Kind
 from .reference_states import REFERENCE_STATES, ReferenceState
-from .units import REFUSED, Unit, all_units
+from .unit import Unit
+from .units import REFUSED, all_units
 
 _MOST_DIGITS = 16
 _LARGE = 100_000
@@ -40,6 +41,10 @@ _TITLES = (
     (dim.SPECIFIC_HEAT, "Specific heat and gas constant"),
     (dim.MOLAR_MASS, "Molar mass"),
     (dim.MOLAR_HEAT, "Molar heat capacity"),
+    (dim.VISCOSITY, "Dynamic viscosity"),
+    (dim.PER_TEMPERATURE, "Thermal expansion"),
+    (dim.COOLING, "Joule-Thomson coefficient"),
+    (dim.CONDUCTANCE, "Sonic conductance"),
 )
 
 _INTRODUCTION = """\

@@ -12,7 +12,8 @@ from ..errors import UnitError
 from . import dimension as dim
 from .catalogue import BAROMETRIC, GAUGE_OF, catalogue
 from .quantity import Kind, Quantity
-from .units import REFUSED, Unit, all_units, units_by_name
+from .unit import Unit
+from .units import REFUSED, all_units, units_by_name
 
 LONGEST_TEXT = 80
 _LARGEST_EXPONENT = 30

@@ -8,43 +8,15 @@ SI units (times a power of π for angles), so that a decimal as typed stays exac
 from __future__ import annotations
 
 from collections.abc import Iterator, Mapping
-from dataclasses import dataclass
 from fractions import Fraction
 from functools import cache
 from types import MappingProxyType
 
 from ..errors import DefinitionError
 from . import dimension as dim
-from .dimension import Dimension
+from .metering_units import metering_units
 from .quantity import Kind
-
-
-@dataclass(frozen=True)
-class Unit:
-    """One unit of the closed list.
-
-    Attributes:
-        name: the name that is printed.
-        factor: value of one unit in coherent SI, without its power of π.
-        dimension: dimension of the unit.
-        kind: the kind of value that the unit states; ``PLAIN`` where it states none.
-        aliases: other accepted spellings.
-        offset: coherent SI value of the unit's zero, for temperature levels.
-        pi_power: power of π in the factor.
-        pint: the same unit for the library at the edge, without kind.
-        reference: name of the reference state of a volume, else empty.
-    """
-
-    name: str
-    factor: Fraction
-    dimension: Dimension
-    kind: Kind = Kind.PLAIN
-    aliases: tuple[str, ...] = ()
-    offset: Fraction = Fraction(0)
-    pi_power: int = 0
-    pint: str = ""
-    reference: str = ""
-
+from .unit import Unit
 
 # Exact definitions: international yard and pound of 1959, SI brochure, NIST SP 811 (from memory).
 _INCH = Fraction("0.0254")
@@ -203,6 +175,7 @@ def _plain_units() -> Iterator[Unit]:
     yield from _mechanical_units()
     yield from _rates()
     yield from _specific_units()
+    yield from metering_units()
     yield Unit("1", Fraction(1), dim.ONE, aliases=("",), pint="dimensionless")
     yield Unit("%", Fraction(1, 100), dim.ONE, pint="percent")
     yield Unit("rad", Fraction(1), dim.ONE, pint="radian")

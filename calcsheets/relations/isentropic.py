@@ -8,6 +8,7 @@ from .relation import Branch, Chapter, Limit, Process, Relation, ending_in
 from .roles import INLET, OUTLET
 from .sources import definition, derived, naca_1135, textbook
 from .thermodynamics import CONSTANT_HEATS, PERFECT, REVERSIBLE
+from .throttles import THROTTLES
 
 R, gamma, c_p = symbols("R gamma c_p")
 p, T, rho, p_0, T_0, rho_0 = symbols("p T rho p_0 T_0 rho_0")
@@ -188,7 +189,14 @@ _PASSAGES = (
         "Adiabatic flow: one stagnation temperature",
         T_02.equals(T_01),
         textbook("First law of thermodynamics, steady adiabatic flow"),
-        (ISENTROPIC_FLOW, PASSAGE, ending_in("orifice", "stream"), *_SHOCKS, *_FANS, FANNO),
+        (
+            ISENTROPIC_FLOW,
+            PASSAGE,
+            *(ending_in(name, "stream") for name in ("orifice", *THROTTLES)),
+            *_SHOCKS,
+            *_FANS,
+            FANNO,
+        ),
         assumptions=("no heat exchange and no shaft work between the stations",),
     ),
     Relation(

@@ -11,12 +11,16 @@ from types import MappingProxyType
 from ..errors import DefinitionError
 from ..expressions import expression_to_mathml
 from . import (
+    critical_nozzles,
     ducts,
     expansions,
     fanno,
+    flow_nozzles,
     isentropic,
     isothermal_ducts,
+    meters,
     oblique_shocks,
+    orifice_plates,
     orifices,
     rayleigh,
     shocks,
@@ -117,6 +121,10 @@ def load_library() -> Library:
                 fanno,
                 isothermal_ducts,
                 rayleigh,
+                meters,
+                orifice_plates,
+                flow_nozzles,
+                critical_nozzles,
             )
         )
     )

@@ -9,6 +9,7 @@ from .isentropic import MACH_BRANCHES
 from .relation import Chapter, Relation
 from .sources import definition, derived, naca_1135, textbook
 from .thermodynamics import CONSTANT_HEATS, PERFECT, REVERSIBLE
+from .throttles import THROTTLES
 
 R, M_w, gamma = symbols("R M_w gamma")
 p, p_g, p_0, p_0g, T, T_0, rho, M, u, p_atm = symbols("p p_g p_0 p_0g T T_0 rho M u p_atm")
@@ -16,7 +17,7 @@ mdot, ndot, G, q_V, A, d, F, F_i, m = symbols("mdot ndot G q_V A d F F_i m")
 p_ref, T_ref, T_atm = symbols("p_ref T_ref T_atm")
 
 _STREAM = ("stream",)
-_FLOWS = ("stream", "orifice")
+_FLOWS = ("stream", "orifice", *THROTTLES)
 
 _DATUM = (
     Relation(

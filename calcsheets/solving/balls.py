@@ -96,7 +96,7 @@ def evaluate(expr: Expr, values: Mapping[Symbol, Ball]) -> Ball:
         case Power(base, exponent):
             raised = evaluate(base, values)
             if isinstance(exponent, Number) and exponent.value.denominator == 1:
-                return raised ** int(exponent.value)
+                return ball_whole_power(raised, int(exponent.value))
             return ball_power(raised, evaluate(exponent, values))
         case Root(radicand):
             return ball_root(evaluate(radicand, values))
@@ -124,6 +124,16 @@ def ball_root(radicand: Ball) -> Ball:
     if radicand.contains(0):
         return arb(0).union(arb(radicand.upper()).sqrt())
     return radicand.sqrt()
+
+
+def ball_whole_power(base: Ball, exponent: int) -> Ball:
+    """Return the ball of a whole power: between those of the ends, where the base has one sign.
+
+    The power of a wide ball as such reaches to zero, and would look like a root beside a pole.
+    """
+    if base.contains(0) or base.is_exact() or not base.is_finite():
+        return base**exponent
+    return (arb(base.lower()) ** exponent).union(arb(base.upper()) ** exponent)
 
 
 def ball_power(base: Ball, power: Ball) -> Ball:

@@ -31,6 +31,7 @@ from .balls import (
     OutsideDomainError,
     ball_power,
     ball_root,
+    ball_whole_power,
     evaluate,
 )
 
@@ -55,7 +56,7 @@ class Arithmetic:
     whole_power: Callable[[Value, int], Value]
 
 
-BALLS = Arithmetic(BALL_FUNCTIONS, ball_root, ball_power, pow)
+BALLS = Arithmetic(BALL_FUNCTIONS, ball_root, ball_power, ball_whole_power)
 
 
 def bind(

@@ -20,6 +20,7 @@ from ..expressions import (
     Root,
     Sum,
     Symbol,
+    children,
     substitute,
     symbols_in,
 )
@@ -27,6 +28,7 @@ from ..planning import Edge, Instance, Loop, Member, Place, Problem
 from ..quantities import Variable, catalogue
 from ..relations import Branch, Limit, Relation, Source
 
+_APART = Fraction(1, 2**120)
 _SOURCE = Source("Elimination from the relations named", "", "", "common practice")
 
 
@@ -80,7 +82,7 @@ class Combination:
             published=published,
             source=_SOURCE,
             offered_by=("combination",),
-            limits=tuple(self._limits(closing, expressions)),
+            limits=tuple(self._limits()),
             branches=tuple(self._branches(given)),
             empirical=any(m.instance.relation.empirical for m in members),
             chapter="combination",
@@ -150,14 +152,18 @@ class Combination:
             for symbol, variable in bound.items()
         }
 
-    def _limits(self, closing: Instance, expressions: Mapping[Variable, Expr]) -> Iterator[Limit]:
-        for limit in closing.relation.limits:
-            condition = self._condition(closing, limit.condition, expressions)
-            if condition is not None:
-                yield replace(limit, condition=condition)
+    def _limits(self) -> Iterator[Limit]:
+        """The limits of all its relations, each once, in the symbols of the set."""
+        found: dict[Condition, Limit] = {}
+        for instance in self._instances:
+            for limit in instance.relation.limits:
+                condition = self._condition(instance, limit.condition, {})
+                if condition is not None:
+                    found.setdefault(condition, replace(limit, condition=condition))
+        yield from found.values()
 
     def _demands(self, expressions: Mapping[Variable, Expr]) -> Iterator[Limit]:
-        """Bounds, limits and branches of what was eliminated."""
+        """Bounds, limits, branches and published forms of what was eliminated."""
         for variable, expr in expressions.items():
             quantity = catalogue()[variable.symbol]
             low, high = Number(quantity.low), Number(quantity.high)
@@ -172,11 +178,23 @@ class Combination:
                 if branch.name == stated:
                     reason = f"{variable} would not lie on the stated branch, {stated}"
                     yield Limit(replace(branch.condition, left=expr), reason, True)
-        for item in self.derived:
-            for limit in item.instance.relation.limits:
-                condition = self._condition(item.instance, limit.condition, expressions)
+        for instance in self._instances:
+            for limit in instance.relation.limits:
+                condition = self._condition(instance, limit.condition, expressions)
                 if condition is not None:
                     yield replace(limit, condition=condition)
+        yield from self._published_forms(expressions)
+
+    def _published_forms(self, expressions: Mapping[Variable, Expr]) -> Iterator[Limit]:
+        """That the published form of a member holds, where isolating squared a root away."""
+        for item in self.derived:
+            sides = item.instance.relation.published
+            if any(_is_squared_away(side, item.symbol) for side in (sides.left, sides.right)):
+                published = self._inserted(sides, item.instance, expressions)
+                sizes = published.left**2 + published.right**2
+                apart = (published.left - published.right) ** 2
+                reason = f"it is a root of the square of {item.instance.relation.title} only"
+                yield Limit(Condition(apart, "<=", Number(_APART) * sizes), reason, True)
 
     def _condition(
         self, instance: Instance, condition: Condition, expressions: Mapping[Variable, Expr]
@@ -347,3 +365,15 @@ def _without(expr: Expr, symbol: Symbol) -> Expr | None:
             return under if under is None or under == _ONE else Root(under)
         case _:
             return None
+
+
+def _is_squared_away(expr: Expr, symbol: Symbol) -> bool:
+    """Whether isolating a symbol raises a root to a power, which can bring in a false root."""
+    rooted = isinstance(expr, Root) or (
+        isinstance(expr, Power)
+        and isinstance(expr.exponent, Number)
+        and expr.exponent.value.denominator != 1
+    )
+    if rooted and symbol in set(symbols_in(expr)):
+        return True
+    return any(_is_squared_away(child, symbol) for child in children(expr))

@@ -22,7 +22,7 @@ from calcsheets.brief import brief_form, parse_brief
 from calcsheets.brief.form import Key, Keys
 from calcsheets.brief.schema import brief_schema
 from calcsheets.errors import BriefError
-from calcsheets.quantities import catalogue, default_unit
+from calcsheets.quantities import Quantity, catalogue, default_unit
 from tests.brief.toml_writer import write_toml
 from tests.conftest import EXAMPLES, ROOT
 
@@ -48,7 +48,13 @@ def value_for(symbol: str) -> str:
     """A value within the bounds of a quantity, with its unit."""
     unit = default_unit(catalogue()[symbol]).name
     number = {"gamma": "1.4", "x": "0.5", "w": "0.5", "p_atm": "98200", "T_ref": "288.15"}
-    return f"{number.get(symbol, '1')} {'' if unit == '1' else unit}".strip()
+    quantity = catalogue()[symbol]
+    inside = "1" if quantity.low <= 1 <= quantity.high else _between(quantity)
+    return f"{number.get(symbol, inside)} {'' if unit == '1' else unit}".strip()
+
+
+def _between(quantity: Quantity) -> str:
+    return str(float((quantity.low + quantity.high) / 2))
 
 
 def content_for(key: Key) -> Any:

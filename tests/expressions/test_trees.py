@@ -58,8 +58,8 @@ def test_only_exact_numbers_stand_in_an_equation() -> None:
 
 def test_a_symbol_is_one_of_the_vocabulary() -> None:
     with pytest.raises(DefinitionError) as caught:
-        Symbol("E")
-    assert str(caught.value) == "definition of symbol E: no such quantity in the vocabulary"
+        Symbol("Quark")
+    assert str(caught.value) == "definition of symbol Quark: no such quantity in the vocabulary"
 
 
 @pytest.mark.parametrize(
@@ -155,6 +155,11 @@ def test_the_derivative_is_that_of_the_expression(expr: Expr) -> None:
         at, g = Fraction(chance.randint(20, 300), 100), Fraction(chance.randint(110, 166), 100)
         expected = mpmath.diff(lambda x, g=g: _float(expr, x, g), float(at), h=1e-6)
         assert _float(slope, float(at), g) == pytest.approx(float(expected), rel=1e-5, abs=1e-7)
+
+
+def test_the_derivative_of_a_square_holds_where_its_base_is_negative() -> None:
+    slope = derivative((M - 3) ** 2, M)
+    assert _float(slope, 1.0, Fraction(7, 5)) == -4.0
 
 
 def _float(expr: Expr, at: float, g: Fraction) -> float:

@@ -8,6 +8,7 @@ from fractions import Fraction
 
 import ironcalc
 import pytest
+from flint import arb
 
 from calcsheets.errors import DefinitionError
 from calcsheets.expressions import (
@@ -69,6 +70,18 @@ def with_known_integrals(expr: Expr) -> Expr:
     return replace_integrals(expr, dict.fromkeys(integrals_in(expr), number))
 
 
+def _from_the_last_bit(expr: Expr, values: dict[Symbol, float]) -> float:
+    """How far a value moves with the last bit of its operands: terms may nearly cancel.
+
+    Each operation of the engine rounds once more, which the factor of the caller covers.
+    """
+    wide = {s: arb(value, abs(value) * 2.0**-53) for s, value in values.items()}
+    try:
+        return float(evaluate(expr, wide).rad())
+    except ArithmeticError:
+        return 0.0
+
+
 def of_one(expr: Expr, values: tuple[float, ...] = (3.0, 2.0, 5.0)) -> object:
     return calculated([formula(expr, CELLS)], dict(zip(CELLS.values(), values, strict=True)))[0]
 
@@ -101,7 +114,8 @@ class TestAgainstASpreadsheetEngine:
                 if not 1e-12 < abs(exact) < 1e12:
                     continue  # an exponential so large magnifies the rounding of its argument
                 compared += 1
-                assert engine == pytest.approx(exact, rel=1e-13), plain_text(statement)
+                allowed = 1e-13 * abs(exact) + 32 * _from_the_last_bit(expr, values)
+                assert abs(engine - exact) <= allowed, plain_text(statement)
         assert compared > 0.9 * len(expressions)
 
     @pytest.mark.parametrize(
@@ -196,6 +210,7 @@ def _symbols(expr: Expr) -> set[Symbol]:
 
 def _value(symbol: Symbol, chance: random.Random) -> float:
     """A positive value well inside the bounds, so that no difference of neighbours is taken."""
-    ranges = {"gamma": (1.2, 1.6), "n": (1.1, 1.5), "mu": (0.3, 1.2), "M": (1.1, 4.0)}
+    ranges = {"gamma": (1.2, 1.6), "n": (1.1, 1.5), "mu": (0.3, 1.2), "M": (1.1, 4.0),
+              "beta_d": (0.3, 0.7), "eps": (0.8, 0.9)}  # fmt: skip
     low, high = ranges.get(symbol.quantity, (0.5, 9.0))
     return chance.uniform(low, high)

@@ -2,8 +2,17 @@
 
 from types import ModuleType
 
-from . import changes, ducts, flow, gas, states, turning, vessels
+from . import changes, ducts, flow, gas, metering, states, turning, vessels
 
-SUBJECTS: tuple[ModuleType, ...] = (states, gas, flow, changes, vessels, turning, ducts)
+SUBJECTS: tuple[ModuleType, ...] = (
+    states,
+    gas,
+    flow,
+    changes,
+    vessels,
+    turning,
+    ducts,
+    metering,
+)
 
 __all__ = ["SUBJECTS"]

@@ -29,8 +29,15 @@ _SIGNS: Mapping[str, str] = MappingProxyType(
     {MINUS: "-", THIN: r" \, ", "·": r" \cdot ", "×": r" \times ", "≤": r" \le ", "≥": r" \ge "}
 )
 _GREEK: Mapping[str, str] = MappingProxyType(
-    {"γ": r"\gamma", "ρ": r"\rho", "μ": r"\mu", "π": r"\pi", "Δ": r"\Delta"}
-)
+    {
+        "α": r"\alpha", "β": r"\beta", "γ": r"\gamma", "δ": r"\delta", "ε": r"\varepsilon",
+        "ζ": r"\zeta", "η": r"\eta", "θ": r"\theta", "κ": r"\kappa", "λ": r"\lambda",
+        "μ": r"\mu", "ν": r"\nu", "ξ": r"\xi", "π": r"\pi", "ϖ": r"\varpi", "ρ": r"\rho",
+        "σ": r"\sigma", "τ": r"\tau", "φ": r"\varphi", "χ": r"\chi", "ψ": r"\psi",
+        "ω": r"\omega", "Δ": r"\Delta", "Ω": r"\Omega", "Φ": r"\Phi", "Γ": r"\Gamma",
+    }
+)  # fmt: skip
+_SUPERSCRIPTS: Mapping[str, str] = MappingProxyType({"′": r"\prime"})
 
 
 def latex_text(statement: Expr | Equation | Condition) -> str:
@@ -51,7 +58,8 @@ def _text(box: Box) -> str:
         case Stacked(above, below):
             return rf"\frac{{{_text(above)}}}{{{_text(below)}}}"
         case Raised(Letter(superscript=star) as base, exponent) if star:
-            return f"{_base(base)}^{{{star}\\,{_text(exponent)}}}"
+            above = _SUPERSCRIPTS.get(star, star)
+            return f"{_base(base)}^{{{above}\\,{_text(exponent)}}}"
         case Raised(base, exponent):
             return f"{_text(base)}^{{{_text(exponent)}}}"
         case RootOf(radicand):
@@ -73,7 +81,8 @@ def _sign(text: str, prefix: bool) -> str:
 
 
 def _letter(letter: Letter) -> str:
-    star = f"^{{{letter.superscript}}}" if letter.superscript else ""
+    above = _SUPERSCRIPTS.get(letter.superscript, letter.superscript)
+    star = f"^{{{above}}}" if above else ""
     return _base(letter) + star
 
 
@@ -86,7 +95,12 @@ def _base(letter: Letter) -> str:
     runs = runs.replace(r"\Delta", r"\Delta ")
     base = rf"\dot{{{runs}}}" if letter.accent == "dot" else runs
     subscript = ",".join(
-        text if text.isdigit() or italic_subscript(text) else rf"\mathrm{{{text}}}"
+        text if text.isdigit() or italic_subscript(text) else rf"\mathrm{{{_upright(text)}}}"
         for text in letter.subscripts
     )
     return f"{base}_{{{subscript}}}" if subscript else base
+
+
+def _upright(text: str) -> str:
+    """A subscript with its Greek letters as commands."""
+    return "".join(f"{_GREEK[c]} " if c in _GREEK else c for c in text)
