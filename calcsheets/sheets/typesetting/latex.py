@@ -58,8 +58,8 @@ def _text(box: Box) -> str:
         case Stacked(above, below):
             return rf"\frac{{{_text(above)}}}{{{_text(below)}}}"
         case Raised(Letter(superscript=star) as base, exponent) if star:
-            above = _SUPERSCRIPTS.get(star, star)
-            return f"{_base(base)}^{{{above}\\,{_text(exponent)}}}"
+            mark = _SUPERSCRIPTS.get(star, star)
+            return f"{_base(base)}^{{{mark}\\,{_text(exponent)}}}"
         case Raised(base, exponent):
             return f"{_text(base)}^{{{_text(exponent)}}}"
         case RootOf(radicand):
