@@ -11,6 +11,7 @@ from .complex_balls import ComplexFunction
 
 Ball = Any  # flint.arb has no type information
 _MOST_EVALUATIONS = 20_000
+_LEAST_BITS = 8
 _SHARE = arb(2) ** -10
 
 
@@ -37,7 +38,7 @@ def integral_ball(
         complex_function,
         acb(start),
         acb(end),
-        rel_tol=_tolerance(abs(end - start), low.rad() + high.rad()),
+        rel_tol=_tolerance(abs(end - start), low.rad() + high.rad(), function((start + end) / 2)),
         eval_limit=_MOST_EVALUATIONS,
     )
     if not value.imag.contains(0):
@@ -50,8 +51,9 @@ def integral_ball(
     return total
 
 
-def _tolerance(way: Ball, uncertain: Ball) -> Ball:
-    """What the integrator aims at: no finer than what uncertain limits leave anyway."""
-    finest = arb(2) ** -ctx.prec
+def _tolerance(way: Ball, uncertain: Ball, integrand: Ball) -> Ball:
+    """What the integrator aims at: no finer than uncertain limits or a wide integrand leave."""
+    bits = integrand.rel_accuracy_bits() if integrand.is_finite() else ctx.prec
+    finest = arb(2) ** -max(min(bits, ctx.prec), _LEAST_BITS)
     coarse = arb(uncertain) * _SHARE
     return arb((coarse / way).mid()) if coarse > finest * way else finest

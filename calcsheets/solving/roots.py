@@ -11,14 +11,16 @@ from collections.abc import Callable, Iterator
 from dataclasses import dataclass
 from fractions import Fraction
 
-from flint import arb
+from flint import arb, ctx
 
 from .balls import Ball, OutsideDomainError, exact_ball
 from .taylor import TaylorForm
 
 _SMALLEST = Fraction(1, 10**12)
 _MOST_CELLS = 20_000
+_SEARCH_BITS = 64  # enough to tell a root from none; its value is narrowed with all bits
 _TINY = Fraction(1, 10**15)
+_NARROW = Fraction(1, 24)
 _BISECTIONS = 12
 _NEWTON_STEPS = 24
 
@@ -62,12 +64,35 @@ def isolate_roots(
         TooManyCellsError: if the search does not end within its limit.
     """
 
+    with ctx.workprec(min(_SEARCH_BITS, ctx.prec)):
+        search = _search(function, slope, low, high, form)
+
     def slope_over(cell: Ball) -> Ball:
         taylor = form(cell)
         return slope(cell) if taylor is None else taylor.slope
 
-    found: list[RootFound] = []
-    undecided: list[tuple[Fraction, Fraction]] = []
+    found = [RootFound(_refine(function, slope_over, a, b), False) for a, b in search.crossings]
+    touching = [RootFound(_interval(a, b), True) for a, b in _merged(search.undecided)]
+    return tuple(sorted(_distinct(found, touching), key=lambda root: float(root.value.mid())))
+
+
+@dataclass(frozen=True)
+class _Search:
+    """Cells with one root each, and cells about which nothing could be decided."""
+
+    crossings: list[tuple[Fraction, Fraction]]
+    undecided: list[tuple[Fraction, Fraction]]
+
+
+def _search(
+    function: BallFunction,
+    slope: BallFunction,
+    low: Fraction,
+    high: Fraction,
+    form: Callable[[Ball], TaylorForm | None],
+) -> _Search:
+    """Halve cells until each is excluded, holds one root, or is too small to tell."""
+    search = _Search([], [])
     cells = list(reversed(list(_first_cells(low, high))))
     visited = 0
     while cells:
@@ -82,6 +107,10 @@ def isolate_roots(
         taylor = form(ball)
         if taylor is not None and not taylor.value.contains(0):
             continue
+        if taylor is None and b - a > _NARROW * max(abs(a), abs(b)):
+            middle = (a + b) / 2  # a slope over a wide cell costs much and says nothing
+            cells += [(middle, b), (a, middle)]
+            continue
         rate = slope(ball) if taylor is None else taylor.slope
         if taylor is None and rate.is_finite() and _excluded(function, rate, ball):
             continue
@@ -89,16 +118,15 @@ def isolate_roots(
             crossing = _crossing(function, a, b)
             if crossing is not None:
                 if crossing:
-                    found.append(RootFound(_refine(function, slope_over, a, b), False))
+                    search.crossings.append((a, b))
                 continue
         if b - a <= _SMALLEST * max(abs(a), abs(b), _TINY):
             # Not finite down to the smallest width is a pole or the edge of the domain.
-            undecided += [(a, b)] if value.is_finite() else []
+            search.undecided.extend([(a, b)] if value.is_finite() else [])
             continue
         middle = (a + b) / 2
         cells += [(middle, b), (a, middle)]
-    touching = [RootFound(_interval(a, b), True) for a, b in _merged(undecided)]
-    return tuple(sorted(_distinct(found, touching), key=lambda root: float(root.value.mid())))
+    return search
 
 
 def _first_cells(low: Fraction, high: Fraction) -> Iterator[tuple[Fraction, Fraction]]:
