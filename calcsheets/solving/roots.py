@@ -18,7 +18,7 @@ from .taylor import TaylorForm
 
 _SMALLEST = Fraction(1, 10**12)
 _MOST_CELLS = 20_000
-_SEARCH_BITS = 64  # enough to tell a root from none; its value is narrowed with all bits
+_SEARCH_BITS = 128  # enough to tell a root from none; its value is narrowed with all bits
 _TINY = Fraction(1, 10**15)
 _NARROW = Fraction(1, 24)
 _BISECTIONS = 12
