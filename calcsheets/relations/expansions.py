@@ -105,12 +105,10 @@ CHAPTER = Chapter(
         Process(
             EXPANSION_FAN,
             "an expansion fan by which a supersonic stream turns away from itself",
-            one_stream=True,
         ),
         Process(
             COMPRESSION_FAN,
             "a smooth isentropic compression by which a supersonic stream turns into itself",
-            one_stream=True,
         ),
     ),
 )

@@ -19,18 +19,22 @@ from . import (
     isentropic,
     isothermal_ducts,
     meters,
+    moving_shocks,
     oblique_shocks,
     orifice_plates,
     orifices,
     rayleigh,
+    sections,
+    shock_tubes,
     shocks,
     streams,
+    surfaces,
     thermodynamics,
     vessels,
 )
 from .relation import Chapter, Process, Regime, Relation, ending_in, starting_from, station_of
 
-STATION_KINDS = ("stream", "vessel")
+STATION_KINDS = ("stream", "vessel", "driver")
 
 
 @dataclass(frozen=True)
@@ -117,6 +121,10 @@ def load_library() -> Library:
                 shocks,
                 oblique_shocks,
                 expansions,
+                surfaces,
+                sections,
+                moving_shocks,
+                shock_tubes,
                 ducts,
                 fanno,
                 isothermal_ducts,

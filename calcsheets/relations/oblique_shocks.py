@@ -267,7 +267,6 @@ CHAPTER = Chapter(
         Process(
             OBLIQUE_SHOCK,
             "an attached plane oblique shock that turns the stream",
-            one_stream=True,
         ),
     ),
 )

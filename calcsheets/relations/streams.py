@@ -25,7 +25,7 @@ _DATUM = (
         "Absolute pressure from gauge pressure",
         p.equals(p_g + p_atm),
         definition("Definition of gauge pressure"),
-        _STREAM,
+        ("stream", "driver"),
         assumptions=("the gauge reads against the local atmosphere",),
     ),
     Relation(

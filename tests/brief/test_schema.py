@@ -47,7 +47,14 @@ def reader_accepts(document: Document) -> bool:
 def value_for(symbol: str) -> str:
     """A value within the bounds of a quantity, with its unit."""
     unit = default_unit(catalogue()[symbol]).name
-    number = {"gamma": "1.4", "x": "0.5", "w": "0.5", "p_atm": "98200", "T_ref": "288.15"}
+    number = {
+        "gamma": "1.4",
+        "gamma_4": "1.4",
+        "x": "0.5",
+        "w": "0.5",
+        "p_atm": "98200",
+        "T_ref": "288.15",
+    }
     quantity = catalogue()[symbol]
     inside = "1" if quantity.low <= 1 <= quantity.high else _between(quantity)
     return f"{number.get(symbol, inside)} {'' if unit == '1' else unit}".strip()

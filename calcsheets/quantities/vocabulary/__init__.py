@@ -2,7 +2,18 @@
 
 from types import ModuleType
 
-from . import changes, ducts, flow, gas, metering, states, turning, vessels
+from . import (
+    changes,
+    ducts,
+    flow,
+    gas,
+    metering,
+    moving_waves,
+    sections,
+    states,
+    turning,
+    vessels,
+)
 
 SUBJECTS: tuple[ModuleType, ...] = (
     states,
@@ -13,6 +24,8 @@ SUBJECTS: tuple[ModuleType, ...] = (
     turning,
     ducts,
     metering,
+    sections,
+    moving_waves,
 )
 
 __all__ = ["SUBJECTS"]
