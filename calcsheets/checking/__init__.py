@@ -1,6 +1,7 @@
 """Stage 9, checking: what the program computed is found again by other means."""
 
-from .findings import Finding, check_record
+from .finding import Finding
+from .findings import check_record
 from .recalculation import ENGINE, check_workbook, recalculated, require_same_values
 
 __all__ = [

@@ -5,12 +5,15 @@ This shares no code with the solving of the relations: another arithmetic, anoth
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+import operator
+from collections.abc import Callable, Mapping
+from types import MappingProxyType
 from typing import Any
 
 from ..errors import DefinitionError
 from ..expressions import (
     CONSTANTS,
+    Condition,
     Constant,
     Expr,
     Function,
@@ -27,6 +30,9 @@ from ..expressions import (
 
 DIGITS = 50
 _LARGEST_ERROR = 1e-25
+COMPARE: Mapping[str, Callable[[Any, Any], bool]] = MappingProxyType(
+    {"<": operator.lt, "<=": operator.le, ">": operator.gt, ">=": operator.ge}
+)
 
 
 def evaluate_decimal(expr: Expr, values: Mapping[Symbol, Any]) -> Any:
@@ -75,6 +81,15 @@ def evaluate_decimal(expr: Expr, values: Mapping[Symbol, Any]) -> Any:
     if isinstance(found, mpmath.mpc):
         raise ArithmeticError("no real value")
     return found
+
+
+def holds_decimal(condition: Condition, values: Mapping[Symbol, Any]) -> bool:
+    """Whether a condition holds; sides that agree to the last digits of a double are equal."""
+    left = evaluate_decimal(condition.left, values)
+    right = evaluate_decimal(condition.right, values)
+    if abs(left - right) <= 1e-15 * (abs(left) + abs(right)):
+        return condition.comparison in ("<=", ">=")
+    return bool(COMPARE[condition.comparison](left, right))
 
 
 def _integral(integral: Integral, values: Mapping[Symbol, Any]) -> Any:

@@ -2,39 +2,18 @@
 
 from __future__ import annotations
 
-import operator
-from collections.abc import Callable, Iterator, Mapping
-from dataclasses import dataclass
+from collections.abc import Iterator, Mapping
 from fractions import Fraction
-from types import MappingProxyType
 from typing import Any
 
-from ..expressions import Condition, Equation, Expr, Number, Sum, Symbol
+from ..expressions import Equation, Expr, Number, Sum, Symbol
 from ..record import InputRecord, IntegralRecord, LimitRecord, Record, ResultRecord, StepRecord
-from .decimals import evaluate_decimal
+from .courses import check_course
+from .decimals import COMPARE, evaluate_decimal, holds_decimal
+from .finding import Finding
 
 _TOLERANCE = 1e-12
 _LAST_DIGIT = 2.0**-52
-_COMPARE: Mapping[str, Callable[[Any, Any], bool]] = MappingProxyType(
-    {"<": operator.lt, "<=": operator.le, ">": operator.gt, ">=": operator.ge}
-)
-
-
-@dataclass(frozen=True)
-class Finding:
-    """What the check of one part came to.
-
-    Attributes:
-        part: such as ``step 3`` or ``input 1``.
-        key: the variable.
-        verdict: ``passed``, ``failed`` or ``not possible``.
-        reason: what was compared, and by how much it differs.
-    """
-
-    part: str
-    key: str
-    verdict: str
-    reason: str
 
 
 def check_record(record: Record) -> tuple[Finding, ...]:
@@ -44,12 +23,13 @@ def check_record(record: Record) -> tuple[Finding, ...]:
         record: the record, as read from its file.
 
     Returns:
-        One finding for each input, step and result.
+        One finding for each input, step, result and course.
     """
     findings = [_check_input(item) for item in record.inputs]
     for step in record.steps:
         findings += _check_step(record, step)
     findings += [_check_result(record, result) for result in record.results]
+    findings += [check_course(course) for course in record.courses]
     return tuple(findings)
 
 
@@ -129,7 +109,7 @@ def _check_limit(
         reason = f"limit needs a value that the calculation does not hold: {limit.reason}"
         verdict = "not possible" if limit.holds is None else "failed"
         return Finding(part, step.key, verdict, reason)
-    verdict = "passed" if _holds(limit.condition, values) == limit.holds else "failed"
+    verdict = "passed" if holds_decimal(limit.condition, values) == limit.holds else "failed"
     return Finding(part, step.key, verdict, f"limit evaluated again: {limit.reason}")
 
 
@@ -137,7 +117,7 @@ def _check_test(part: str, step: StepRecord, values: Mapping[Symbol, Any]) -> Fi
     test = step.test
     if test is None:
         return Finding(part, step.key, "not possible", "no regime test")
-    expected = test.when_true if _holds(test.condition, values) else test.when_false
+    expected = test.when_true if holds_decimal(test.condition, values) else test.when_false
     verdict = "passed" if expected == test.outcome else "failed"
     return Finding(part, step.key, verdict, f"regime test evaluated again: {expected}")
 
@@ -200,7 +180,7 @@ def _check_result(record: Record, result: ResultRecord) -> Finding:
         shifted = si - mpmath.mpf(offset.numerator) / offset.denominator
         value = shifted * factor.denominator / factor.numerator / mpmath.pi**result.pi_power
     for criterion in result.criteria:
-        if _COMPARE[criterion.comparison](result.value, criterion.limit) != criterion.holds:
+        if COMPARE[criterion.comparison](result.value, criterion.limit) != criterion.holds:
             return Finding(part, result.key, "failed", f"criterion {criterion.typed}")
     return _compared(part, result.key, value, result.value, "conversion to the wanted unit")
 
@@ -210,15 +190,6 @@ def _compared(part: str, key: str, value: Any, stored: float, what: str) -> Find
     difference = float(abs(value - stored)) / scale
     verdict = "passed" if difference <= _TOLERANCE else "failed"
     return Finding(part, key, verdict, f"{what} differs by {difference:.1e}")
-
-
-def _holds(condition: Condition, values: Mapping[Symbol, Any]) -> bool:
-    """Whether a condition holds; sides that agree to the last digits of a double are equal."""
-    left = evaluate_decimal(condition.left, values)
-    right = evaluate_decimal(condition.right, values)
-    if abs(left - right) <= 1e-15 * (abs(left) + abs(right)):
-        return condition.comparison in ("<=", ">=")
-    return bool(_COMPARE[condition.comparison](left, right))
 
 
 def _value_of(record: Record, key: str) -> float | None:

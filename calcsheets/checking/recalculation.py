@@ -11,7 +11,7 @@ from typing import Any, Protocol
 from ..errors import CheckError
 from ..record import Record
 from ..sheets.workbook import make_workbook
-from .findings import Finding
+from .finding import Finding
 
 ENGINE = "IronCalc"
 LARGEST_DIFFERENCE = 1e-12

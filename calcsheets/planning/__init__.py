@@ -2,10 +2,11 @@
 
 from .advice import closing_inputs
 from .coupled import Field, Loop
-from .problem import Instance, Member, Place, Problem, RegimeInstance, state_problem
+from .problem import CourseInstance, Instance, Member, Place, Problem, RegimeInstance, state_problem
 from .search import Edge, Reach, reach
 
 __all__ = [
+    "CourseInstance",
     "Edge",
     "Field",
     "Instance",

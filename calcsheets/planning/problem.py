@@ -11,6 +11,7 @@ from ..expressions import Condition, Equation, Expr, Number, Symbol
 from ..quantities import Variable
 from ..relations import (
     Branch,
+    Course,
     Library,
     Limit,
     Regime,
@@ -145,6 +146,19 @@ class RegimeInstance:
 
 
 @dataclass(frozen=True)
+class CourseInstance:
+    """A course at a process."""
+
+    course: Course
+    place: Place
+
+    @cached_property
+    def binding(self) -> Mapping[Symbol, Variable]:
+        """The variable of each symbol that must be known."""
+        return self.place.variables(self.course.symbols)
+
+
+@dataclass(frozen=True)
 class Problem:
     """Everything that planning knows.
 
@@ -152,11 +166,13 @@ class Problem:
         brief: the brief.
         instances: relations at places, in a total order.
         regimes: regime tests at processes, by the variable that they decide.
+        courses: courses of processes, in the order of the path.
     """
 
     brief: Brief
     instances: tuple[Instance, ...]
     regimes: Mapping[Variable, RegimeInstance]
+    courses: tuple[CourseInstance, ...]
 
     @cached_property
     def known(self) -> frozenset[Variable]:
@@ -236,6 +252,12 @@ def state_problem(brief: Brief, library: Library) -> Problem:
         brief=brief,
         instances=tuple(offered[key] for key in sorted(offered)),
         regimes={test.variable: test for test in sorted(tests, key=lambda test: test.key)},
+        courses=tuple(
+            CourseInstance(course, place)
+            for place, offers in places
+            for course in library.courses
+            if offers in course.offered_by
+        ),
     )
 
 

@@ -8,6 +8,7 @@ from .context import (
     ReferenceRecord,
     StationRecord,
 )
+from .course_model import CaseRecord, ColumnRecord, CourseIntegralRecord, CourseRecord
 from .model import (
     SCHEMA,
     ConsistencyRecord,
@@ -38,7 +39,11 @@ __all__ = [
     "SCHEMA",
     "AlternativeRecord",
     "AssumptionRecord",
+    "CaseRecord",
+    "ColumnRecord",
     "ConsistencyRecord",
+    "CourseIntegralRecord",
+    "CourseRecord",
     "CriterionRecord",
     "FieldRecord",
     "HalvingRecord",

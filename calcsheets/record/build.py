@@ -13,6 +13,7 @@ from ..planning import Instance, Problem
 from ..quantities import Variable, catalogue
 from ..relations import Regime, Relation, Source
 from ..solving import Doubles, Outcome, StepOutcome, in_doubles, midpoint, working_precision
+from .build_courses import CourseRecords, used_courses
 from .build_results import ResultRecords
 from .build_steps import Numbers, StepRecords
 from .checks import consistency_checks
@@ -76,6 +77,7 @@ class _Builder:
         made = tuple(step_records.step(step) for step in self.outcome.steps)
         results = ResultRecords(self.outcome, self.doubles, where, made)
         relations = tuple(self._relations())
+        courses = CourseRecords(self.outcome, self.doubles, step_records.operand)
         return Record(
             schema=SCHEMA,
             program=program_name(),
@@ -94,6 +96,7 @@ class _Builder:
                 results.result(wanted, number)
                 for number, wanted in enumerate(self.brief.wanted, start=1)
             ),
+            courses=tuple(courses.courses()),
             checks=tuple(consistency_checks(self.outcome)),
             relations=relations,
             assumptions=tuple(
@@ -123,6 +126,8 @@ class _Builder:
         for step in self.outcome.steps:
             used.update(step.edge.inputs)
             used.update(variable for variable in self._limit_variables(step))
+        for course in used_courses(self.outcome):
+            used.update(course.binding.values())
         return used
 
     def _limit_variables(self, step: StepOutcome) -> Iterator[Variable]:

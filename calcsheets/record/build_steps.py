@@ -188,21 +188,22 @@ class StepRecords:
         for symbol in symbols:
             if symbol == unknown:
                 continue
-            variable = source.place.variable(symbol)
-            quantity = symbol.definition
-            found.append(
-                Operand(
-                    symbol=symbol,
-                    key=str(variable),
-                    title=quantity.title,
-                    place=self.outcome.problem.title(variable),
-                    value=midpoint(self.outcome.values[variable]),
-                    unit=quantity.unit,
-                    input=self.where.inputs.get(variable, 0),
-                    step=self.where.steps.get(variable, 0),
-                )
-            )
+            found.append(self.operand(symbol, source.place.variable(symbol)))
         return tuple(found)
+
+    def operand(self, symbol: Symbol, variable: Variable) -> Operand:
+        """Return the record of a known quantity."""
+        quantity = symbol.definition
+        return Operand(
+            symbol=symbol,
+            key=str(variable),
+            title=quantity.title,
+            place=self.outcome.problem.title(variable),
+            value=midpoint(self.outcome.values[variable]),
+            unit=quantity.unit,
+            input=self.where.inputs.get(variable, 0),
+            step=self.where.steps.get(variable, 0),
+        )
 
     def _relative_residual(self, source: Instance, solution: Solution) -> float:
         scale = size_of(source.relation, self._values(source, source.relation.symbols))

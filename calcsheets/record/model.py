@@ -15,6 +15,7 @@ from .context import (
     ReferenceRecord,
     StationRecord,
 )
+from .course_model import CourseRecord
 from .step_model import StepRecord
 
 SCHEMA = "calcsheets-record/1"
@@ -214,6 +215,7 @@ class Record:
         inputs: every input that the calculation used.
         steps: every step, each after those that it needs.
         results: every wanted result.
+        courses: how processes run from their start to their end.
         checks: relations that were not needed, evaluated.
         relations: relations and tests used, by name.
         assumptions: of the brief.
@@ -234,6 +236,7 @@ class Record:
     inputs: tuple[InputRecord, ...]
     steps: tuple[StepRecord, ...]
     results: tuple[ResultRecord, ...]
+    courses: tuple[CourseRecord, ...]
     checks: tuple[ConsistencyRecord, ...]
     relations: tuple[RelationRecord, ...]
     assumptions: tuple[AssumptionRecord, ...]

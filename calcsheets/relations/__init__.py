@@ -1,5 +1,6 @@
 """Stage 3, library: published equations with source, limits, assumptions and cautions."""
 
+from .course import INTERVALS, Case, Course, CourseColumn, Words
 from .library import STATION_KINDS, Library, load_library
 from .mixtures import mixture_relations
 from .relation import (
@@ -16,15 +17,20 @@ from .relation import (
 )
 
 __all__ = [
+    "INTERVALS",
     "STATION_KINDS",
     "Branch",
+    "Case",
     "Chapter",
+    "Course",
+    "CourseColumn",
     "Library",
     "Limit",
     "Process",
     "Regime",
     "Relation",
     "Source",
+    "Words",
     "ending_in",
     "load_library",
     "mixture_relations",

@@ -32,6 +32,7 @@ from . import (
     thermodynamics,
     vessels,
 )
+from .course import Course
 from .relation import Chapter, Process, Regime, Relation, ending_in, starting_from, station_of
 
 STATION_KINDS = ("stream", "vessel", "driver")
@@ -49,7 +50,7 @@ class Library:
 
     def __post_init__(self) -> None:
         items: tuple[Relation | Regime, ...] = (*self.relations, *self.regimes)
-        names = [item.name for item in items]
+        names = [item.name for item in (*items, *self.courses)]
         for name in sorted(set(names)):
             if names.count(name) > 1:
                 raise DefinitionError(f"relation {name}", "the name is taken twice")
@@ -58,7 +59,7 @@ class Library:
         for kind in STATION_KINDS:
             offers |= {starting_from(process, kind) for process in self.processes}
             offers |= {ending_in(process, kind) for process in self.processes}
-        for item in items:
+        for item in (*items, *self.courses):
             unknown = sorted(set(item.offered_by) - offers)
             if unknown:
                 raise DefinitionError(f"relation {item.name}", f"nothing is called {unknown[0]}")
@@ -82,6 +83,11 @@ class Library:
         )
 
     @cached_property
+    def courses(self) -> tuple[Course, ...]:
+        """How processes run, row by row, chapter by chapter."""
+        return tuple(course for chapter in self.chapters for course in chapter.courses)
+
+    @cached_property
     def processes(self) -> Mapping[str, Process]:
         """Every process by its name."""
         return MappingProxyType(
@@ -90,7 +96,7 @@ class Library:
 
     @cached_property
     def digest(self) -> str:
-        """SHA-256 over the names, equations and sources of all relations and regime tests."""
+        """SHA-256 over the names, equations and sources of relations, regime tests and courses."""
         lines = [
             f"{relation.name} {expression_to_mathml(relation.published)} {relation.source}"
             for relation in self.relations
@@ -98,6 +104,11 @@ class Library:
         lines += [
             f"{regime.name} {expression_to_mathml(regime.condition)} {regime.source}"
             for regime in self.regimes
+        ]
+        lines += [
+            f"{course.name} {expression_to_mathml(statement)} {course.source}"
+            for course in self.courses
+            for statement in course.statements
         ]
         return hashlib.sha256("\n".join(lines).encode()).hexdigest()
 

@@ -3,10 +3,13 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
-from typing import Any
+from typing import TYPE_CHECKING, Any
 
 from ..errors import DefinitionError
 from ..expressions import Condition, Equation, Expr, Symbol, dimension_of, equation_to_sympy
+
+if TYPE_CHECKING:
+    from .course import Course
 
 KNOWN = ("read in the source", "library", "common practice", "from memory", "brief")
 
@@ -204,6 +207,7 @@ class Chapter:
         relations: in the order in which they are read.
         regimes: the regime tests.
         processes: the processes that the chapter introduces.
+        courses: how processes run, row by row.
     """
 
     name: str
@@ -211,6 +215,7 @@ class Chapter:
     relations: tuple[Relation, ...]
     regimes: tuple[Regime, ...] = ()
     processes: tuple[Process, ...] = ()
+    courses: tuple[Course, ...] = ()
 
 
 def _require_homogeneous(name: str, left: Expr, right: Expr) -> None:

@@ -12,6 +12,7 @@ OUTLET = "2"
 THROUGH = "through"
 SUPPLY = "supply"
 DISCHARGE = "discharge"
+NOW = "now"
 
 ROLE_TITLES = {
     INLET: "at the first station of the process",
@@ -19,4 +20,5 @@ ROLE_TITLES = {
     THROUGH: "of the orifice that the gas passes",
     SUPPLY: "at the station upstream of that orifice",
     DISCHARGE: "at the station downstream of that orifice",
+    NOW: "of the vessel in each row of its course",
 }

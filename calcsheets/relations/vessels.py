@@ -21,6 +21,7 @@ from .vessel_changes import (
     UNCHOKED_AT_THE_END,
     UNIFORM,
 )
+from .vessel_courses import COURSES
 from .vessel_times import FILLING_TIMES, LET_DOWN_TIMES
 
 gamma, R, M_w, t, dm = symbols("gamma R M_w t dm")
@@ -149,4 +150,5 @@ CHAPTER = Chapter(
         Process(FILLING_ISOTHERMAL, "a vessel filled at constant temperature", True),
         Process(FILLING_ADIABATIC, "a vessel filled without heat exchange", True),
     ),
+    courses=COURSES,
 )  # fmt: skip

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from ..expressions import Symbol
-from ..relations import Chapter, Relation, load_library
+from ..relations import INTERVALS, Chapter, Course, Relation, load_library
 from ..relations.roles import ROLE_TITLES
 from .typesetting import plain_text, symbol_text, unit_text
 
@@ -51,6 +51,20 @@ def _chapter(chapter: Chapter) -> Iterator[str]:
         yield f"- offered by: {', '.join(regime.offered_by)}"
         yield f"- source: {regime.source}; known: {regime.source.known}"
         yield ""
+    for course in chapter.courses:
+        yield from _course(course)
+
+
+def _course(course: Course) -> Iterator[str]:
+    yield f"### {course.title}"
+    yield ""
+    for statement in course.statements:
+        yield f"    {plain_text(statement)}"
+    yield ""
+    yield f"- course `{course.name}`: {symbol_text(course.running)} in {INTERVALS} intervals"
+    yield f"- offered by: {', '.join(course.offered_by)}"
+    yield f"- source: {course.source}; known: {course.source.known}"
+    yield ""
 
 
 def _relation(relation: Relation) -> Iterator[str]:

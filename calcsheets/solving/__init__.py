@@ -13,7 +13,8 @@ from .balls import (
 )
 from .bisection import HALVINGS, Bisection, Halving
 from .consistency import LARGEST_DIFFERENCE, differences
-from .doubles import Doubles, TableErrors, in_doubles
+from .courses import CourseRows, lay_out
+from .doubles import CourseErrors, Doubles, TableErrors, in_doubles
 from .moves import ACTIONS, Isolation, Move, isolate, occurrences
 from .quadrature import Table, tables_of
 from .question import Question, compare, residual_of, size_of
@@ -27,6 +28,8 @@ __all__ = [
     "PRECISION",
     "Ball",
     "Bisection",
+    "CourseErrors",
+    "CourseRows",
     "Doubles",
     "Halving",
     "Isolation",
@@ -47,6 +50,7 @@ __all__ = [
     "exact_ball",
     "in_doubles",
     "isolate",
+    "lay_out",
     "midpoint",
     "occurrences",
     "residual_of",

@@ -6,15 +6,17 @@ with the condition of every step.
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Iterable, Mapping
 from dataclasses import dataclass
 
 from flint import arb, ctx
 
-from ..expressions import Symbol, derivative
+from ..expressions import Integral, Symbol, derivative
 from ..planning import Instance
 from ..quantities import Variable
+from ..relations import Course
 from .balls import Ball, OutsideDomainError, evaluate, exact_ball
+from .courses import course_rows
 from .quadrature import Table, widest_of
 from .run import Outcome, StepOutcome
 
@@ -43,12 +45,29 @@ class Doubles:
             table: the sum.
             bound: the variable of each symbol.
         """
-        values = {symbol: self.balls[v] for symbol, v in bound.items() if v in self.balls}
         with ctx.workprec(_DOUBLE_BITS):
-            try:
-                return TableErrors(*(_bound(ball) for ball in widest_of(table, values)))
-            except OutsideDomainError:
-                return TableErrors(_NOTHING_LEFT, _NOTHING_LEFT, _NOTHING_LEFT)
+            return _table_errors(table, [self._values(bound)])
+
+    def of_course(
+        self, course: Course, bound: Mapping[Symbol, Variable], tables: Iterable[Table]
+    ) -> CourseErrors:
+        """Return bounds on the errors of a course.
+
+        Args:
+            course: the course.
+            bound: the variable of each symbol that must be known.
+            tables: each of its integrals in some row.
+        """
+        with ctx.workprec(_DOUBLE_BITS):
+            rows = course_rows(course, self._values(bound))
+            symbols = (course.running, *(column.symbol for column in course.columns))
+            return CourseErrors(
+                {symbol: max(_bound(row[symbol]) for row in rows) for symbol in symbols},
+                {table.integral: _table_errors(table, rows) for table in tables},
+            )
+
+    def _values(self, bound: Mapping[Symbol, Variable]) -> dict[Symbol, Ball]:
+        return {symbol: self.balls[v] for symbol, v in bound.items() if v in self.balls}
 
 
 @dataclass(frozen=True)
@@ -64,6 +83,19 @@ class TableErrors:
     limits: float
     heights: float
     total: float
+
+
+@dataclass(frozen=True)
+class CourseErrors:
+    """Bounds on the absolute errors of a course in double arithmetic.
+
+    Attributes:
+        values: of each of its quantities in any row.
+        tables: of each of its integrals in any row.
+    """
+
+    values: Mapping[Symbol, float]
+    tables: Mapping[Integral, TableErrors]
 
 
 def in_doubles(outcome: Outcome) -> Doubles:
@@ -86,6 +118,17 @@ def in_doubles(outcome: Outcome) -> Doubles:
 def _bound(ball: Ball) -> float:
     radius = float(ball.rad()) if ball.is_finite() else _NOTHING_LEFT
     return min(_ROUNDINGS_OF_A_FUNCTION * radius, _NOTHING_LEFT)
+
+
+def _table_errors(table: Table, rows: Iterable[Mapping[Symbol, Ball]]) -> TableErrors:
+    """The largest errors of a sum in any of several sets of values."""
+    try:
+        widest = [widest_of(table, values) for values in rows]
+    except OutsideDomainError:
+        return TableErrors(_NOTHING_LEFT, _NOTHING_LEFT, _NOTHING_LEFT)
+    return TableErrors(
+        *(max(_bound(ball) for ball in group) for group in zip(*widest, strict=True))
+    )
 
 
 def _in_doubles(step: StepOutcome, source: Instance, balls: Mapping[Variable, Ball]) -> Ball:

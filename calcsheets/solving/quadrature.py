@@ -6,7 +6,7 @@ needs is decided by its proved enclosure; it is given up where the sum does not 
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 from fractions import Fraction
 from functools import lru_cache
@@ -61,6 +61,16 @@ def tables_of(expr: Expr, values: Mapping[Symbol, Ball]) -> tuple[Table, ...]:
     return tuple(_table(integral, values) for integral in dict.fromkeys(integrals_in(expr)))
 
 
+def tables_alike(integral: Integral, rows: Sequence[Mapping[Symbol, Ball]]) -> tuple[Table, ...]:
+    """Return an integral as a sum over the same places for several sets of values.
+
+    Raises:
+        UntabulatedIntegral: if no sum comes near the integral.
+    """
+    count = max(len(_table(integral, values).places) for values in rows)
+    return tuple(_as_table(integral, _parts(integral, values, count)) for values in rows)
+
+
 def tables_at(tables: tuple[Table, ...], values: Mapping[Symbol, Ball]) -> tuple[Table, ...]:
     """Return the same sums for other values."""
     return tuple(
@@ -97,7 +107,8 @@ def _table(integral: Integral, values: Mapping[Symbol, Ball]) -> Table:
     exact = evaluate(integral, values)
     for count in (number * PLACES_OF_A_PART for number in _PARTS):
         parts = _parts(integral, values, count)
-        if abs(parts.total - exact) <= parts.size * _NEAR + exact.rad():
+        apart = abs(arb(parts.total.mid()) - arb(exact.mid()))
+        if apart <= parts.size * _NEAR + exact.rad() + parts.total.rad():
             return _as_table(integral, parts)
     raise UntabulatedIntegral(str(integral.variable), count)
 

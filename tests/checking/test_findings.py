@@ -37,6 +37,7 @@ def test_every_input_step_and_result_is_checked(record: Record) -> None:
     expected = {f"input {item.number}" for item in record.inputs}
     expected |= {f"step {step.number}" for step in record.steps}
     expected |= {f"result {result.number}" for result in record.results}
+    expected |= {f"course {course.key}" for course in record.courses}
     assert parts == expected
 
 

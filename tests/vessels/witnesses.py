@@ -15,6 +15,7 @@ def mass_flow(p_0: float, t_0: float, p_back: float, gamma: float = GAMMA) -> fl
     """Isentropic flow through an orifice, choked or not."""
     critical = (2 / (gamma + 1)) ** (gamma / (gamma - 1))
     r = max(p_back / p_0, critical)
+    r = min(r, 1.0)  # an integrator may try a step beyond
     bracket = r ** (2 / gamma) - r ** ((gamma + 1) / gamma)
     return C_D * A * p_0 * math.sqrt(2 * gamma / ((gamma - 1) * R * t_0) * bracket)
 

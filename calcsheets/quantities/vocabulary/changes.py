@@ -18,6 +18,7 @@ def quantities() -> Iterator[Quantity]:
     yield quantity(
         "ds", "change of specific entropy", n("Δs"), dim.SPECIFIC_HEAT, "J/(kg*K)", low="-1e9"
     )
+    yield quantity("row", "number of the row", n("i"), dim.ONE, "1", high="1e6", zero=True)
     yield quantity("q", "heat added per mass", n("q"), energy, "J/kg", low="-1e12")
     yield quantity(
         "w_s", "shaft work done by the gas per mass", n("w", "s"), energy, "J/kg", low="-1e12"

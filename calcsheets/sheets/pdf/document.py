@@ -17,6 +17,7 @@ from ...record import Record
 from ..templates import template_environment, templates_folder
 from . import views
 from .cards import cards
+from .courses import course_tables
 
 
 @dataclass(frozen=True)
@@ -84,6 +85,7 @@ def render_html(record: Record, paper: str = "A4") -> str:
         inputs=views.input_lines(record),
         relation_assumptions=views.assumption_lines(record),
         cards=cards(record, size.column),
+        courses=course_tables(record, size.column),
         outside=tuple(step for step in record.steps if not step.within_limits),
         checks=views.check_lines(record),
         sources=views.source_lines(record),

@@ -8,10 +8,10 @@ from types import MappingProxyType
 
 from ...expressions import CONSTANTS, Constant, Symbol
 from ...gases import gases
-from ...relations.roles import DISCHARGE, INLET, OUTLET, SUPPLY, THROUGH
+from ...relations.roles import DISCHARGE, INLET, NOW, OUTLET, SUPPLY, THROUGH
 
 ROLE_SUBSCRIPTS: Mapping[str, str] = MappingProxyType(
-    {INLET: "1", OUTLET: "2", THROUGH: "", SUPPLY: "s", DISCHARGE: "b"}
+    {INLET: "1", OUTLET: "2", THROUGH: "", SUPPLY: "s", DISCHARGE: "b", NOW: ""}
 )
 """The subscript that marks a role; a gas is marked by its formula, any other role by itself."""
 

@@ -9,7 +9,8 @@ from typing import Any
 
 from ...record import Record
 from .calculation import write_calculation
-from .cells import CALCULATION, INPUTS, INTEGRALS, RESULTS, ROOTS, place_cells
+from .cells import CALCULATION, COURSE, INPUTS, INTEGRALS, RESULTS, ROOTS, place_cells
+from .course import write_courses
 from .inputs import write_inputs
 from .integrals import has_integrals, integral_cells, write_integrals
 from .page import FormulaCell, Page, make_styles
@@ -53,6 +54,7 @@ def make_workbook(record: Record, paper: str = "A4") -> Workbook:
         styles = make_styles(book)
         names = ["Cover", RESULTS, INPUTS, "Assumptions", CALCULATION]
         names += [ROOTS] if root_steps(record) else []
+        names += [COURSE] if record.courses else []
         names += [INTEGRALS] if has_integrals(record) else []
         names += ["References"]
         pages = {name: Page(book, styles, name, record, paper) for name in names}
@@ -61,10 +63,12 @@ def make_workbook(record: Record, paper: str = "A4") -> Workbook:
         write_results(pages[RESULTS], record, cells)
         write_inputs(pages[INPUTS], record, book)
         write_assumptions(pages["Assumptions"], record)
-        integrals = integral_cells(record)
+        integrals = integral_cells(record, cells)
         write_calculation(pages[CALCULATION], record, cells, root_cells(record), integrals.closed)
         if ROOTS in pages:
             write_roots(pages[ROOTS], record, cells, integrals.trials)
+        if COURSE in pages:
+            write_courses(pages[COURSE], record, cells, integrals.courses)
         if INTEGRALS in pages:
             write_integrals(pages[INTEGRALS], record, cells)
         write_references(pages["References"], record)
