@@ -28,11 +28,10 @@ def differences(outcome: Outcome) -> Iterator[tuple[Instance, float]]:
         step.edge.source.key for step in outcome.steps if isinstance(step.edge.source, Instance)
     }
     for instance in outcome.problem.instances:
-        regime = instance.regime_variable
         if (
             instance.key not in used
             and all(variable in outcome.values for variable in instance.binding.values())
-            and (regime is None or outcome.regimes.get(regime) == instance.relation.regime)
+            and all(outcome.regimes.get(v) == regime for v, regime in instance.regimes)
             and _applies(outcome, instance)
         ):
             yield instance, _difference(outcome, instance)

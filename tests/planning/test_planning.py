@@ -304,5 +304,7 @@ def test_every_quantity_of_the_vocabulary_occurs_in_a_relation() -> None:
     used = {s.quantity for relation in relations for s in relation.symbols}
     sides = (side for r in relations for side in (r.published.left, r.published.right))
     used |= {integral.variable.quantity for side in sides for integral in integrals_in(side)}
+    used |= {s.quantity for course in load_library().courses for statement in course.statements
+             for s in statement.symbols}  # fmt: skip
     regimes_and_mixtures = {"regime", "x", "w"}
     assert set(catalogue()) - used - regimes_and_mixtures == {"dp", "T_ref", "p_ref"} - used
