@@ -113,6 +113,7 @@ def _integral(integral: Integral, values: Mapping[Symbol, Any]) -> Any:
 _NAMES = {
     "exp": "exp",
     "ln": "log",
+    "lg": "log10",
     "sin": "sin",
     "cos": "cos",
     "tan": "tan",

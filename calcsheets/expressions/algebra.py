@@ -74,6 +74,7 @@ def _functions() -> dict[str, Any]:
     return {
         "exp": sympy.exp,
         "ln": sympy.log,
+        "lg": lambda argument: sympy.log(argument, 10),
         "sin": sympy.sin,
         "cos": sympy.cos,
         "tan": sympy.tan,

@@ -33,6 +33,7 @@ _LONGEST = 100_000
 _DEEPEST = 60
 _COMPARISONS = {"=": "eq", "<": "lt", "<=": "leq", ">": "gt", ">=": "geq"}
 _COMPARISON_OF = {name: sign for sign, name in _COMPARISONS.items()}
+_TEN = Number(Fraction(10))
 
 Statement = Expr | Equation | Condition
 
@@ -97,6 +98,8 @@ def _element(expr: Expr) -> ET.Element:
             return _apply("arith1", "power", base, exponent)
         case Root(radicand):
             return _apply("arith1", "root", radicand, Number(Fraction(2)))
+        case Function("lg", argument):
+            return _apply("transc1", "log", _TEN, argument)
         case Function(name, argument):
             return _apply("transc1", name, argument)
         case Integral():
@@ -181,7 +184,9 @@ def _applied(element: ET.Element, depth: int) -> Expr:
             return Root(radicand)
         case "nums1", "rational", (Number(above), Number(below)) if below:
             return Number(above / below)
-        case "transc1", _, (argument,) if name in FUNCTIONS:
+        case "transc1", "log", (base, argument) if base == _TEN:
+            return Function("lg", argument)
+        case "transc1", _, (argument,) if name in FUNCTIONS and name != "lg":
             return Function(name, argument)
     raise DefinitionError("MathML", f'operator "{name}" with {len(operands)} operands')
 

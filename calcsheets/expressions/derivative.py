@@ -101,6 +101,8 @@ def _outer(name: str, argument: Expr) -> Expr:
             return Function("exp", argument)
         case "ln":
             return 1 / argument
+        case "lg":
+            return 1 / (argument * Function("ln", Number(Fraction(10))))
         case "sin":
             return Function("cos", argument)
         case "cos":

@@ -197,7 +197,7 @@ class Integral(Expr):
             raise DefinitionError(name, "its limits hold its own variable")
 
 
-FUNCTIONS = ("exp", "ln", "sin", "cos", "tan", "arcsin", "arccos", "arctan")
+FUNCTIONS = ("exp", "ln", "lg", "sin", "cos", "tan", "arcsin", "arccos", "arctan")
 
 
 @dataclass(frozen=True)
@@ -254,6 +254,11 @@ def sqrt(radicand: Expr) -> Expr:
 def ln(argument: Expr) -> Expr:
     """Return the natural logarithm."""
     return Function("ln", argument)
+
+
+def lg(argument: Expr) -> Expr:
+    """Return the logarithm to base 10."""
+    return Function("lg", argument)
 
 
 def exp(argument: Expr) -> Expr:

@@ -52,3 +52,8 @@ def iso_5167(part: int, clause: str = "", known: str = "library") -> Source:
 def iso_9300(clause: str = "") -> Source:
     """ISO 9300, flow measurement by critical flow nozzles; its text was not open."""
     return Source("ISO 9300, Critical flow nozzles", "2005", clause, "from memory")
+
+
+def library(document: str, edition: str) -> Source:
+    """A formula that general-purpose libraries implement alike; see ``tests/published``."""
+    return Source(document, edition, "", "library")

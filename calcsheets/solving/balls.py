@@ -40,6 +40,7 @@ BALL_FUNCTIONS: Mapping[str, Callable[[Ball], Ball]] = MappingProxyType(
     {
         "exp": lambda x: x.exp(),
         "ln": lambda x: _inside(x, x > 0 or x.contains(0)).log(),
+        "lg": lambda x: _inside(x, x > 0 or x.contains(0)).log() / arb(10).log(),
         "sin": lambda x: x.sin(),
         "cos": lambda x: x.cos(),
         "tan": lambda x: x.tan(),

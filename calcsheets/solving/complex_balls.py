@@ -129,6 +129,7 @@ _FUNCTIONS: Mapping[str, ComplexFunction] = MappingProxyType(
     {
         "exp": lambda x, analytic: x.exp(),
         "ln": lambda x, analytic: x.log(analytic=analytic),
+        "lg": lambda x, analytic: x.log(analytic=analytic) / arb(10).log(),
         "sin": lambda x, analytic: x.sin(),
         "cos": lambda x, analytic: x.cos(),
         "tan": lambda x, analytic: x.tan(),

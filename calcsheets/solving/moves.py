@@ -50,10 +50,12 @@ ACTIONS = (
     "take the positive square root",
     "raise to the power",
     "take logarithms and divide by",
+    "raise 10 to both sides",
     "apply",
     "collect powers of",
 )
 
+_TEN = Number(Fraction(10))
 _INVERSE = {
     "exp": "ln",
     "ln": "exp",
@@ -155,10 +157,15 @@ def _undo(side: Expr, other: Expr, unknown: Symbol) -> _Undone | None:
             return _moved("square", None, radicand, Power(other, Number(Fraction(2))))
         case Power(base, exponent) if _holds(base, unknown):
             return _undo_power(base, exponent, other)
+        case Power(Number(base), exponent) if base == 10:
+            logarithm = Function("lg", other)
+            return _moved("apply", logarithm, exponent, logarithm)
         case Power(base, exponent):
             logarithm = Function("ln", base)
             solved = Quotient(Function("ln", other), logarithm)
             return _moved("take logarithms and divide by", logarithm, exponent, solved)
+        case Function("lg", argument):
+            return _moved("raise 10 to both sides", None, argument, Power(_TEN, other))
         case Function(name, argument) if has_one_inverse(name, argument):
             inverse = _INVERSE[name]
             return _moved("apply", Function(inverse, other), argument, Function(inverse, other))

@@ -86,7 +86,7 @@ def _size(expr: Expr, values: Mapping[Symbol, Ball]) -> Ball:
             return math.prod((_size(factor, values) for factor in factors), start=arb(1))
         case Quotient(numerator, denominator):
             return _size(numerator, values) / abs(evaluate(denominator, values))
-        case Function("ln", _):
+        case Function("ln" | "lg", _):
             return 1 + abs(evaluate(expr, values))
         case _:
             return abs(evaluate(expr, values))

@@ -111,7 +111,7 @@ def _search(
             middle = (a + b) / 2  # a slope over a wide cell costs much and says nothing
             cells += [(middle, b), (a, middle)]
             continue
-        rate = slope(ball) if taylor is None else taylor.slope
+        rate = _rate(slope, ball) if taylor is None else taylor.slope
         if taylor is None and rate.is_finite() and _excluded(function, rate, ball):
             continue
         if rate.is_finite() and not rate.contains(0):
@@ -152,6 +152,12 @@ def _defined(function: BallFunction, ball: Ball) -> Ball | None:
         return function(ball)
     except OutsideDomainError:
         return None
+
+
+def _rate(slope: BallFunction, ball: Ball) -> Ball:
+    """The slope's ball; no number where its own form is defined nowhere in the cell."""
+    value = _defined(slope, ball)
+    return arb("nan") if value is None else value
 
 
 def _excluded(function: BallFunction, rate: Ball, ball: Ball) -> bool:

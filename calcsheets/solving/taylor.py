@@ -27,6 +27,7 @@ _FUNCTIONS: Mapping[str, Callable[[Series], Series]] = MappingProxyType(
     {
         "exp": lambda x: x.exp(),
         "ln": lambda x: x.log(),
+        "lg": lambda x: x.log() / arb(10).log(),
         "sin": lambda x: x.sin(),
         "cos": lambda x: x.cos(),
         "tan": lambda x: x.tan(),

@@ -26,6 +26,7 @@ from calcsheets.expressions import (
     exp,
     expression_from_mathml,
     expression_to_mathml,
+    lg,
     ln,
     number,
     sqrt,
@@ -141,11 +142,12 @@ def test_hostile_mathml_is_refused(text: str, reason: str) -> None:
         exp(-M) / (1 + M),
         (1 + (gamma - 1) / 2 * M**2) ** (gamma / (gamma - 1)),
         Power(gamma, M),
+        lg(2 + M / 3) * M,
         Function("sin", M) * Function("cos", M) + Function("tan", M / 3),
         Function("arcsin", M / 5) + Function("arccos", M / 5) * Function("arctan", M),
         number("3") - M * PI,
     ],
-    ids=range(9),
+    ids=range(10),
 )
 def test_the_derivative_is_that_of_the_expression(expr: Expr) -> None:
     """Against numerical differentiation by mpmath (library)."""
@@ -181,6 +183,25 @@ def test_nonsense_has_no_dimension(expr: Expr, reason: str) -> None:
     with pytest.raises(DefinitionError) as caught:
         dimension_of(expr)
     assert reason in str(caught.value)
+
+
+def test_a_logarithm_to_base_ten_is_one_of_the_standard_dictionary() -> None:
+    """OpenMath, transc1: ``log`` takes the base first."""
+    text = expression_to_mathml(lg(M))
+    assert text == (
+        '<apply><csymbol cd="transc1">log</csymbol><cn type="integer">10</cn><ci>M</ci></apply>'
+    )
+    assert expression_from_mathml(text) == lg(M)
+    for other in ('<cn type="integer">2</cn>', "<ci>M</ci>"):
+        with pytest.raises(DefinitionError, match="operator"):
+            expression_from_mathml(text.replace('<cn type="integer">10</cn>', other))
+    with pytest.raises(DefinitionError, match="operator"):
+        expression_from_mathml('<apply><csymbol cd="transc1">lg</csymbol><ci>M</ci></apply>')
+
+
+def test_a_logarithm_to_base_ten_is_one_to_computer_algebra_too() -> None:
+    assert to_sympy(lg(M)) == sympy.log(to_sympy(M), 10)
+    assert to_sympy(lg(number("1000"))) == 3
 
 
 def test_a_root_and_a_rational_power_have_a_dimension() -> None:

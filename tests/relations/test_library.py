@@ -38,7 +38,7 @@ def test_the_library_holds_the_scope_of_the_first_chapters() -> None:
     assert [chapter.name for chapter in LIBRARY.chapters] == [
         "thermodynamics", "isentropic", "streams", "orifices", "vessels", "shocks",
         "oblique_shocks", "expansions", "surfaces", "sections", "moving_shocks", "shock_tubes",
-        "ducts", "fanno", "isothermal_ducts", "rayleigh",
+        "ducts", "friction", "fanno", "isothermal_ducts", "rayleigh",
         "meters", "orifice_plates", "flow_nozzles", "critical_nozzles",
     ]  # fmt: skip
     assert {relation.chapter for relation in LIBRARY.relations} == {
@@ -66,6 +66,8 @@ WITHOUT_MODEL = {
     "throat_reynolds_number", "relative_pressure_loss", "nozzle_throat_reynolds",
     "lift", "wave_drag", "driver_gas_constant", "driver_mach",
     "hydraulic_diameter", "duct_length", "duct_pressure_drop",
+    "rectangle_area", "rectangle_perimeter", "relative_roughness", "fanning_factor",
+    "stanton_pannell_factor", "wall_shear",
 }  # fmt: skip
 TWO_ROOTS = {
     ("area_mach", "M"), ("mass_flow_stagnation", "M"), ("unchoked_mass_flow", "p.2"),
@@ -81,7 +83,7 @@ SOMETIMES_TWO_ROOTS = {
 RISE_AND_FALL = {
     *((f"C_{tapping}_{size}", "beta_d") for tapping in ("corner", "D_half", "flange")
       for size in ("large", "small")),
-    ("C_eccentric", "beta_d"),
+    ("C_eccentric", "beta_d"), ("churchill", "Re"),
 }  # fmt: skip
 
 

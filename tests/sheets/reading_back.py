@@ -15,7 +15,10 @@ TOKEN = re.compile(
     r"\s*(\d[\d\u202f\u2006]*(?:\.[\d\u202f\u2006]+)?|[A-Za-zγρμπ]+|[⁻⁰¹²³⁴-⁹]+|[+−·×/^√()])"
 )
 SUPERSCRIPTS = str.maketrans("⁰¹²³⁴⁵⁶⁷⁸⁹⁻", "0123456789-")
-FUNCTIONS = {"exp": math.exp, "ln": math.log, "sin": math.sin, "cos": math.cos, "tan": math.tan}
+FUNCTIONS = {
+    "exp": math.exp, "ln": math.log, "lg": math.log10,
+    "sin": math.sin, "cos": math.cos, "tan": math.tan,
+}  # fmt: skip
 
 
 class Reader:

@@ -35,7 +35,7 @@ from calcsheets.solving import evaluate, exact_ball, isolate, midpoint, working_
 
 a, b, c = symbols("p T rho")
 CELLS = {a: "A1", b: "B1", c: "C1"}
-ALLOWED = {"PI", "POWER", "SQRT", "EXP", "LN", "SIN", "COS", "TAN", "ASIN", "ACOS", "ATAN"}
+ALLOWED = {"PI", "POWER", "SQRT", "EXP", "LN", "LOG10", "SIN", "COS", "TAN", "ASIN", "ACOS", "ATAN"}
 LIBRARY = load_library()
 INTEGRAL = 0.4375
 
@@ -147,6 +147,10 @@ class TestAgainstASpreadsheetEngine:
             there_and_back = Function(_INVERSE[name], Function(name, a))
             assert of_one(there_and_back, (value, 1.0, 1.0)) == pytest.approx(value, rel=1e-14)
 
+    def test_the_logarithm_to_base_ten_is_that_of_the_engine(self):
+        assert of_one(Function("lg", a), (1000.0, 1.0, 1.0)) == pytest.approx(3, rel=1e-15)
+        assert formula(Function("lg", a / b), CELLS) == "LOG10((A1/B1))"
+
     def test_a_comparison_is_true_where_the_condition_holds(self):
         row = {"A1": 3.0, "B1": 2.0, "C1": 5.0}
         conditions = [a.at_most(3), a.below(3), (a + b).at_least(c), (a / b).above(c)]
@@ -186,7 +190,7 @@ class TestText:
         cells = {s: "A1" for e in all_expressions() for s in _symbols(e)}
         for expr in all_expressions():
             text = formula(with_known_integrals(expr), cells)
-            assert set(re.findall(r"([A-Z]+)\(", text)) <= ALLOWED
+            assert set(re.findall(r"([A-Z][A-Z0-9]*)\(", text)) <= ALLOWED
             assert re.fullmatch(r"[A-Z0-9+\-*/(),.]+", text)
             assert not re.search(r"(^|[(,*/+-])-", text), "no sign stands before an operand"
 

@@ -268,6 +268,8 @@ def evaluate(expr: Expr, values: Mapping[str, Decimal]) -> Decimal:
             return value(radicand).sqrt()
         case Function("ln", argument):
             return value(argument).ln()
+        case Function("lg", argument):
+            return value(argument).log10()
         case Function("exp", argument):
             return value(argument).exp()
     raise AssertionError(expr)

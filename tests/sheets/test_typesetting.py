@@ -289,7 +289,7 @@ def trees() -> st.SearchStrategy[Expr]:
             | st.builds(Power, inner, inner)
             | st.builds(Negative, inner)
             | st.builds(Root, inner)
-            | st.builds(Function, st.sampled_from(["exp", "ln", "sin"]), inner)
+            | st.builds(Function, st.sampled_from(["exp", "ln", "lg", "sin"]), inner)
         )
 
     return st.recursive(leaves, grown, max_leaves=9)
@@ -315,6 +315,8 @@ def value_of(expr: Expr, values: Mapping[Symbol, float]) -> float:
             return math.sqrt(value_of(radicand, values))
         case Function("ln", argument):
             return math.log(value_of(argument, values))
+        case Function("lg", argument):
+            return math.log10(value_of(argument, values))
         case Function(name, argument):
             return getattr(math, name)(value_of(argument, values))
     raise AssertionError(expr)
@@ -443,6 +445,16 @@ class TestMoves:
             None,
         )
         assert move_words("divide by", a) == ("divide both sides by", a)
+
+    def test_a_logarithm_to_base_ten_is_named_as_such(self):
+        assert move_words("apply", Function("lg", a)) == (
+            "take the logarithm to base 10 of both sides",
+            None,
+        )
+        assert move_words("raise 10 to both sides", None) == (
+            "raise 10 to the power of both sides",
+            None,
+        )
 
     def test_an_unknown_action_is_refused(self):
         with pytest.raises(DefinitionError, match="move guess: there are no words for it"):

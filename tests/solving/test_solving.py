@@ -15,7 +15,7 @@ from scipy.optimize import brentq
 import calcsheets
 from calcsheets.checking.decimals import evaluate_decimal
 from calcsheets.errors import NoRoot, OutsideLimit, SeveralRoots
-from calcsheets.expressions import Symbol, symbols
+from calcsheets.expressions import Equation, Symbol, lg, number, symbols
 from calcsheets.record import Record, StepRecord
 from calcsheets.relations import Limit, load_library
 from calcsheets.sheets.typesetting import plain_text
@@ -79,6 +79,21 @@ def test_an_unknown_below_a_fraction_and_inside_a_power() -> None:
 def test_a_logarithm_is_undone() -> None:
     last = moves("let_down_time_isothermal", "p_0.2")[-1]
     assert last.startswith("take reciprocals and multiply by p_0,1: p_0,2 = p_0,1/exp(")
+
+
+def of_equation(equation: Equation, unknown: Symbol) -> list[str]:
+    isolation = isolate(equation, unknown)
+    assert isolation is not None
+    return [f"{move.action}: {plain_text(move.result)}" for move in isolation.moves]
+
+
+def test_a_logarithm_to_base_ten_is_undone_by_powers_of_ten_and_the_other_way_round() -> None:
+    a, b = symbols("M M_cr")
+    assert of_equation(Equation(lg(2 * a), b), a) == [
+        "raise 10 to both sides: 2·M = 10^M*",
+        "divide by: M = 10^M*/2",
+    ]
+    assert of_equation(Equation(number("10") ** a, b), a) == ["apply: M = lg(M*)"]
 
 
 def collected(name: str, unknown: str) -> list[str]:

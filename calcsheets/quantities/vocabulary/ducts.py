@@ -19,6 +19,7 @@ def quantities() -> Iterator[Quantity]:
     """Return the quantities."""
     yield from _of_the_duct()
     yield from _of_its_resistance()
+    yield from _of_friction_factors()
     yield from _of_adiabatic_friction()
     yield from _of_isothermal_friction()
     yield from _of_heating()
@@ -32,6 +33,12 @@ def _of_the_duct() -> Iterator[Quantity]:
     )
     yield quantity("D_h", "hydraulic diameter", n("D", "h"), dim.LENGTH, "m", high="1e4")
     yield quantity("P_w", "wetted perimeter", n("P", "w"), dim.LENGTH, "m", high="1e5")
+    yield quantity("W_d", "width of a rectangular duct", n("W"), dim.LENGTH, "m", high="1e4")
+    yield quantity("H_d", "height of a rectangular duct", n("H"), dim.LENGTH, "m", high="1e4")
+    yield quantity("D_o", "outer diameter of an annular duct", n("D", "o"), dim.LENGTH, "m",
+                   high="1e4")  # fmt: skip
+    yield quantity("D_i", "inner diameter of an annular duct", n("D", "i"), dim.LENGTH, "m",
+                   high="1e4", zero=True)  # fmt: skip
     yield quantity("F_w", "force on the wall along the duct", n("F", "w"), dim.FORCE, "N",
                    low="-1e12")  # fmt: skip
     yield quantity("Qdot", "heat flow into the stream", n("Q", accent="dot"), dim.POWER, "W",
@@ -48,6 +55,35 @@ def _of_its_resistance() -> Iterator[Quantity]:
         "L_eq", "equivalent length of the fittings", n("L", "eq"), dim.LENGTH, "m", high="1e8",
         zero=True,
     )  # fmt: skip
+
+
+def _of_friction_factors() -> Iterator[Quantity]:
+    n = Notation
+    one = dim.ONE
+    yield quantity("Re", "Reynolds number of the duct", n("Re"), one, "1")
+    yield quantity("k", "equivalent roughness of the wall", n("k"), dim.LENGTH, "m", high="1",
+                   zero=True)  # fmt: skip
+    yield quantity("k_rel", "relative roughness", n("k", "rel"), one, "1", high="0.5", zero=True)
+    yield quantity("f_F", "Fanning friction factor", n("f", "F"), one, "1", high="2500")
+    yield quantity(
+        "phi_f", "friction factor τ/(ρ u²), an eighth of the Darcy factor", n("φ", "f"), one, "1",
+        high="1250",
+    )  # fmt: skip
+    yield quantity("tau_w", "shear stress on the wall", n("τ", "w"), dim.PRESSURE, "Pa",
+                   kind=Kind.DIFFERENTIAL)  # fmt: skip
+    for symbol, subscript, law in (
+        ("f_lam", "lam", "of laminar flow"),
+        ("f_CW", "CW", "by Colebrook and White"),
+        ("f_Hd", "H", "by Haaland"),
+        ("f_SJ", "SJ", "by Swamee and Jain"),
+        ("f_Ch", "Ch", "by Churchill"),
+        ("f_r", "r", "of fully rough flow"),
+        ("f_sm", "sm", "of smooth ducts"),
+        ("f_Bl", "Bl", "of smooth ducts by Blasius"),
+    ):
+        yield quantity(
+            symbol, f"Darcy friction factor {law}", n("f", subscript), one, "1", high="1e4"
+        )
 
 
 def _sonic(letter: str, flow: str, parts: str) -> Iterator[Quantity]:

@@ -21,6 +21,7 @@ _WORDS: Mapping[str, str] = MappingProxyType(
         "take the positive square root": "take the positive square root of both sides",
         "raise to the power": "raise both sides to the power",
         "take logarithms and divide by": "take the natural logarithm of both sides and divide by",
+        "raise 10 to both sides": "raise 10 to the power of both sides",
         "collect powers of": "clear fractions and collect powers of",
     }
 )
@@ -28,6 +29,7 @@ _FUNCTIONS: Mapping[str, str] = MappingProxyType(
     {
         "exp": "exponential",
         "ln": "natural logarithm",
+        "lg": "logarithm to base 10",
         "sin": "sine",
         "cos": "cosine",
         "tan": "tangent",

@@ -1,9 +1,9 @@
 """Expressions as cell formulas.
 
-Only ``+ - * /``, ``PI``, ``POWER``, ``SQRT``, ``EXP``, ``LN`` and the circular functions of
-the first edition of ISO/IEC 29500 are written, with every operation in brackets, so that no
-engine has to agree with another on precedence. Engines and people differ on a sign before a
-power (``-2^2``), so powers are ``POWER`` and a negative is ``0-(x)``.
+Only ``+ - * /``, ``PI``, ``POWER``, ``SQRT``, ``EXP``, ``LN``, ``LOG10`` and the circular
+functions of the first edition of ISO/IEC 29500 are written, with every operation in brackets,
+so that no engine has to agree with another on precedence. Engines and people differ on a sign
+before a power (``-2^2``), so powers are ``POWER`` and a negative is ``0-(x)``.
 """
 
 from __future__ import annotations
@@ -34,6 +34,7 @@ _FUNCTIONS: Mapping[str, str] = MappingProxyType(
     {
         "exp": "EXP",
         "ln": "LN",
+        "lg": "LOG10",
         "sin": "SIN",
         "cos": "COS",
         "tan": "TAN",
