@@ -16,6 +16,7 @@ from ..quantities.dimension import (
     ONE,
     PRESSURE,
     TEMPERATURE,
+    VELOCITY,
     VOLUME_FLOW,
 )
 
@@ -91,6 +92,10 @@ def _of_metering() -> Iterator[ConstantDefinition]:
     yield row(
         "q_Kv", "one cubic metre per hour, the unit of Kv", Fraction(1, 3600),
         VOLUME_FLOW, "q", "u", "IEC 60534-1", "common practice",
+    )  # fmt: skip
+    yield row(
+        "nu_u", "one square metre per second, the unit of kinematic viscosity", Fraction(1),
+        VELOCITY * LENGTH, "ν", "u", "IEC 60534-2-1", "common practice",
     )  # fmt: skip
     yield row(
         "p_Kv", "pressure drop of the water test that defines Kv", Fraction(100000),

@@ -11,6 +11,7 @@ from types import MappingProxyType
 from ..errors import DefinitionError
 from ..expressions import expression_to_mathml
 from . import (
+    control_valves,
     critical_nozzles,
     ducts,
     expansions,
@@ -146,6 +147,7 @@ def load_library() -> Library:
                 orifice_plates,
                 flow_nozzles,
                 critical_nozzles,
+                control_valves,
             )
         )
     )

@@ -15,7 +15,7 @@ from .sources import definition, derived, iso_5167, textbook
 from .thermodynamics import PERFECT
 from .throttles import METERS, NOZZLES, ORIFICE_PLATES, PLATE_UNCERTAINTY, SPECIAL_PLATES, THROTTLES
 
-gamma, mdot, C, eps, beta, E, d, D, dp, dw = symbols("gamma mdot C eps beta_d E d D dp dw")
+gamma, mdot, C, eps, beta, E, d, D, dp, dw = symbols("gamma mdot C eps beta_d E d D dp_m dw")
 d_20, D_20, alpha_d, alpha_D, Re_D, Re_d = symbols("d_20 D_20 alpha_d alpha_D Re_D Re_d")
 mu_JT, K_w, xi = symbols("mu_JT K_w xi_w")
 p_1, T_1, rho_1, eta_1, kappa_1 = (s.of(INLET) for s in symbols("p T rho eta kappa"))

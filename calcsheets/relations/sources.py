@@ -57,3 +57,10 @@ def iso_9300(clause: str = "") -> Source:
 def library(document: str, edition: str) -> Source:
     """A formula that general-purpose libraries implement alike; see ``tests/published``."""
     return Source(document, edition, "", "library")
+
+
+def iec_60534(section: str = "1", what: str = "gas and vapour") -> Source:
+    """IEC 60534-2, flow capacity of control valves; its equations by the library fluids."""
+    edition = {"1": "2011", "4": ""}[section]
+    known = {"1": "library", "4": "from memory"}[section]
+    return Source(f"IEC 60534-2-{section}, Control valves, {what}", edition, "", known)

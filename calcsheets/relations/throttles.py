@@ -34,4 +34,8 @@ TOROIDAL_FINE = "critical flow nozzle, accurately machined toroidal throat"
 CYLINDRICAL = "critical flow nozzle, cylindrical throat"
 CRITICAL_NOZZLES = (TOROIDAL, TOROIDAL_FINE, CYLINDRICAL)
 
-THROTTLES = (*METERS, *CRITICAL_NOZZLES)
+VALVE = "control valve"
+VALVE_REDUCED = "control valve between reducers"
+VALVES = (VALVE, VALVE_REDUCED)
+
+THROTTLES = (*METERS, *CRITICAL_NOZZLES, *VALVES)

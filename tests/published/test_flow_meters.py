@@ -127,7 +127,7 @@ def test_the_velocity_of_approach_and_the_pressure_loss_are_those_of_fluids(beta
     approach = flow_meter.velocity_of_approach_factor(0.2, 0.2 * beta)
     assert solved("velocity_of_approach", "E", beta_d=repr(beta)) == pytest.approx(approach)
     loss = flow_meter.dP_orifice(0.2, 0.2 * beta, 2e5, 1.83e5, 0.605)
-    given = {"beta_d": repr(beta), "C": "0.605", "dp": "17000"}
+    given = {"beta_d": repr(beta), "C": "0.605", "dp_m": "17000"}
     assert solved("pressure_loss_of_plate", "dw", **given) == pytest.approx(loss, rel=EXACT)
 
 

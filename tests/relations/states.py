@@ -18,6 +18,7 @@ from calcsheets.solving import (
     working_precision,
 )
 from calcsheets.solving.balls import OutsideDomainError
+from tests.relations.meter_ranges import METER_RANGES
 
 # Ranges in which quantities of the field lie, in coherent SI.
 RANGES: Mapping[str, tuple[float, float]] = {
@@ -36,13 +37,7 @@ RANGES: Mapping[str, tuple[float, float]] = {
     "F_i": (10.0, 1e5), "Qdot": (1e3, 1e6),
     "w_b": (-2e5, 2e5), "dh": (-2e5, 2e5), "de": (-2e5, 2e5), "ds": (-500.0, 500.0),
     "theta": (0.02, 1.0), "beta": (0.15, 1.5), "nu": (0.02, 1.8), "phi_fan": (0.1, 1.5),
-    "beta_d": (0.2, 0.74), "C": (0.55, 0.99), "eps": (0.85, 0.999), "tau_p": (0.76, 0.98),
-    "D": (0.051, 0.9), "Re_D": (2e4, 5e6), "A_RG": (0.002, 0.3), "L_1": (0.03, 1.0),
-    "Lp_2": (0.03, 0.5), "Mp_2": (0.1, 2.0), "kappa": (1.05, 1.66), "eta": (8e-6, 4e-5),
-    "alpha": (1e-6, 2e-5), "mu_JT": (1e-7, 1e-5), "dp": (1e3, 5e4), "dw": (5e2, 4e4),
-    "K_w": (0.1, 50.0), "xi_w": (0.05, 0.9), "E": (1.0001, 1.3), "U": (0.001, 0.05),
-    "Re_nt": (4e5, 1e6), "Re_d": (2e4, 5e6), "C_star": (0.6, 0.75), "A_2t": (1.05, 3.0),
-    "r": (0.6, 0.99),
+    **METER_RANGES,
     "M_n1": (1.02, 4.0), "M_n2": (0.3, 0.98), "M_s": (1.02, 8.0), "M_r": (1.02, 3.0),
     "delta": (-0.5, 0.5), "alpha_i": (0.01, 0.4), "epsilon": (0.02, 0.4), "C_N": (0.01, 0.6),
     "C_A": (0.005, 0.1), "C_L": (0.01, 0.6), "C_D": (0.005, 0.2), "C_pr": (-0.5, 1.5),

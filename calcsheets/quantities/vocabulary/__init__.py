@@ -12,6 +12,7 @@ from . import (
     sections,
     states,
     turning,
+    valves,
     vessels,
 )
 
@@ -26,6 +27,7 @@ SUBJECTS: tuple[ModuleType, ...] = (
     metering,
     sections,
     moving_waves,
+    valves,
 )
 
 __all__ = ["SUBJECTS"]

@@ -67,6 +67,10 @@ def _of_the_pipe() -> Iterator[Quantity]:
     yield quantity("Re_D", "Reynolds number of the pipe", n("Re", "D"), dim.ONE, "1")
     yield quantity("Re_d", "Reynolds number of the throat", n("Re", "d"), dim.ONE, "1")
     yield quantity(
+        "dp_m", "pressure difference between the tappings", n("Δp"), dim.PRESSURE, "Pa",
+        high="1e8", kind=Kind.DIFFERENTIAL,
+    )  # fmt: skip
+    yield quantity(
         "dw", "pressure loss that remains", n("Δϖ"), dim.PRESSURE, "Pa",
         high="1e10", kind=Kind.DIFFERENTIAL,
     )  # fmt: skip

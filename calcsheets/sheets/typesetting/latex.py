@@ -35,6 +35,7 @@ _GREEK: Mapping[str, str] = MappingProxyType(
         "μ": r"\mu", "ν": r"\nu", "ξ": r"\xi", "π": r"\pi", "ϖ": r"\varpi", "ρ": r"\rho",
         "σ": r"\sigma", "τ": r"\tau", "φ": r"\varphi", "χ": r"\chi", "ψ": r"\psi",
         "ω": r"\omega", "Δ": r"\Delta", "Ω": r"\Omega", "Φ": r"\Phi", "Γ": r"\Gamma",
+        "Σ": r"\Sigma",
     }
 )  # fmt: skip
 _SUPERSCRIPTS: Mapping[str, str] = MappingProxyType({"′": r"\prime"})
