@@ -7,7 +7,16 @@ from fractions import Fraction
 from typing import Any
 
 from ..expressions import Equation, Expr, Number, Sum, Symbol
-from ..record import InputRecord, IntegralRecord, LimitRecord, Record, ResultRecord, StepRecord
+from ..record import (
+    LARGEST_DIFFERENCE,
+    InputRecord,
+    IntegralRecord,
+    LimitRecord,
+    Record,
+    ResultRecord,
+    RouteRecord,
+    StepRecord,
+)
 from .courses import check_course
 from .decimals import COMPARE, evaluate_decimal, holds_decimal
 from .finding import Finding
@@ -30,6 +39,8 @@ def check_record(record: Record) -> tuple[Finding, ...]:
         findings += _check_step(record, step)
     findings += [_check_result(record, result) for result in record.results]
     findings += [check_course(course) for course in record.courses]
+    for route in record.routes:
+        findings += _check_route(record, route)
     return tuple(findings)
 
 
@@ -183,6 +194,37 @@ def _check_result(record: Record, result: ResultRecord) -> Finding:
         if COMPARE[criterion.comparison](result.value, criterion.limit) != criterion.holds:
             return Finding(part, result.key, "failed", f"criterion {criterion.typed}")
     return _compared(part, result.key, value, result.value, "conversion to the wanted unit")
+
+
+def _check_route(record: Record, route: RouteRecord) -> Iterator[Finding]:
+    """Every step of another route, and where it leads against the calculation."""
+    import mpmath
+
+    part = f"other route to result {route.result}"
+    if route.value is None:
+        yield Finding(part, route.key, "not possible", route.reason)
+        return
+    own: dict[str, float] = {}
+    for step in route.steps:
+        known = {o.key: own.get(o.key, _value_of(record, o.key)) for o in step.operands}
+        stale = [o.key for o in step.operands if o.value != known[o.key]]
+        published = record.relation(step.relation).published
+        if stale or not isinstance(published, Equation):
+            yield Finding(part, step.key, "failed", f"{stale} is not the value of its origin")
+            return
+        values = {o.symbol: mpmath.mpf(o.value) for o in step.operands}
+        values[step.symbol] = mpmath.mpf(step.value)
+        yield _check_equation(part, step.key, published, values)
+        own[step.key] = step.value
+    first = _value_of(record, route.key)
+    if own.get(route.key) != route.value or first is None:
+        yield Finding(part, route.key, "failed", "it does not end with its own value")
+        return
+    scale = max(abs(first), abs(route.value))
+    difference = 0.0 if scale == 0 else (route.value - first) / scale
+    agrees = abs(difference) <= LARGEST_DIFFERENCE and difference == route.difference
+    reason = f"both routes differ by {difference:.1e}"
+    yield Finding(part, route.key, "passed" if agrees else "failed", reason)
 
 
 def _compared(part: str, key: str, value: Any, stored: float, what: str) -> Finding:

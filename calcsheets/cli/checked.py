@@ -19,15 +19,16 @@ def check(folder: Path, json: bool) -> int:
     with working("checking"):
         record = read_record(record_file.read_bytes())
         findings = (*check_record(record), *check_workbook(workbook_file.read_bytes(), record))
-    failed = [finding for finding in findings if finding.verdict != "passed"]
+    failed = [finding for finding in findings if finding.verdict == "failed"]
     if json:
         print_json({"digest": record.digest, "findings": [_facts(f) for f in findings]})
     else:
         rows = [(f.part, f.key, f.verdict, f.reason) for f in findings]
         print_table(f"Check of {record_file.name}", ("part", "quantity", "verdict", "reason"), rows)
-        typer.echo(
-            f"{len(findings) - len(failed)} of {len(findings)} passed; record {record.digest}"
-        )
+        passed = sum(finding.verdict == "passed" for finding in findings)
+        open_ones = len(findings) - passed - len(failed)
+        left = f", {open_ones} not possible" if open_ones else ""
+        typer.echo(f"{passed} of {len(findings)} passed{left}; record {record.digest}")
     return MISSED if failed else DONE
 
 

@@ -3,6 +3,7 @@
 from .advice import closing_inputs
 from .coupled import Field, Loop
 from .problem import CourseInstance, Instance, Member, Place, Problem, RegimeInstance, state_problem
+from .routes import Routes
 from .search import Edge, Reach, reach
 
 __all__ = [
@@ -16,6 +17,7 @@ __all__ = [
     "Problem",
     "Reach",
     "RegimeInstance",
+    "Routes",
     "closing_inputs",
     "reach",
     "state_problem",

@@ -10,7 +10,7 @@ from __future__ import annotations
 
 import heapq
 from collections import defaultdict
-from collections.abc import Iterable, Iterator, Mapping
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass
 from functools import lru_cache
 
@@ -18,7 +18,8 @@ from ..expressions import Equation, Symbol, integrals_in, symbols_in
 from ..quantities import Variable
 from .problem import Instance, Problem, RegimeInstance
 
-Cost = tuple[int, int, int]
+Cost = tuple[int, ...]
+Key = tuple[int, str, str]
 
 
 @dataclass(frozen=True)
@@ -96,13 +97,30 @@ def reach(
     """
     known = problem.known | frozenset(extra)
     edges = (*offered_edges(problem, regimes, assumed, open_regimes), *further)
+    return Reach(known, cheapest(known, edges))
+
+
+def cheapest(
+    known: frozenset[Variable],
+    edges: Sequence[Edge],
+    shunned: frozenset[Key] = frozenset(),
+    until: Variable | None = None,
+) -> dict[Variable, Edge]:
+    """Return the edge of each variable that follows, by the derivation of least cost.
+
+    Args:
+        known: what is known.
+        edges: every way to a variable that may be taken.
+        shunned: keys of relations that cost more than anything else.
+        until: a variable after which the search may end.
+    """
     waiting = [len(set(edge.inputs) - known) for edge in edges]
     users: defaultdict[Variable, list[int]] = defaultdict(list)
     for index, edge in enumerate(edges):
         for variable in set(edge.inputs) - known:
             users[variable].append(index)
-    derivations = _Derivations()
-    heap: list[tuple[Cost, str, tuple[int, str, str], int]] = []
+    derivations = _Derivations(shunned)
+    heap: list[tuple[Cost, str, Key, int]] = []
 
     def offer(index: int) -> None:
         edge = edges[index]
@@ -119,11 +137,13 @@ def reach(
         if edge.target in derivations.edges:
             continue
         derivations.take(edge)
+        if edge.target == until:
+            break
         for user in users[edge.target]:
             waiting[user] -= 1
             if waiting[user] == 0:
                 offer(user)
-    return Reach(known, derivations.edges)
+    return derivations.edges
 
 
 class _Derivations:
@@ -132,9 +152,11 @@ class _Derivations:
     Sets are bits of whole numbers, so that a step that two inputs share counts once.
     """
 
-    def __init__(self) -> None:
+    def __init__(self, shunned: frozenset[Key]) -> None:
         self.edges: dict[Variable, Edge] = {}
+        self._shunned = shunned
         self._behind: dict[Variable, int] = {}
+        self._avoided = 0
         self._roots = 0
         self._empirical = 0
 
@@ -142,7 +164,9 @@ class _Derivations:
         """Return the cost of a derivation that ends with this edge."""
         behind = self._union(edge)
         own = edge.cost
+        avoided = edge.source.key in self._shunned
         return (
+            avoided + (behind & self._avoided).bit_count(),
             own[0] + (behind & self._roots).bit_count(),
             own[1] + (behind & self._empirical).bit_count(),
             own[2] + behind.bit_count(),
@@ -152,6 +176,7 @@ class _Derivations:
         """Settle on an edge for its target."""
         bit = 1 << len(self.edges)
         self._behind[edge.target] = self._union(edge) | bit
+        self._avoided |= bit * (edge.source.key in self._shunned)
         self._roots |= bit * edge.cost[0]
         self._empirical |= bit * edge.cost[1]
         self.edges[edge.target] = edge

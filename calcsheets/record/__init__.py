@@ -19,6 +19,7 @@ from .model import (
     ResultRecord,
     SourceRecord,
 )
+from .route_model import LARGEST_DIFFERENCE, RouteRecord, RouteStep
 from .step_model import (
     AlternativeRecord,
     HalvingRecord,
@@ -36,6 +37,7 @@ from .step_model import (
 )
 
 __all__ = [
+    "LARGEST_DIFFERENCE",
     "SCHEMA",
     "AlternativeRecord",
     "AssumptionRecord",
@@ -62,6 +64,8 @@ __all__ = [
     "RelationRecord",
     "ResultRecord",
     "RootRecord",
+    "RouteRecord",
+    "RouteStep",
     "SourceRecord",
     "StationRecord",
     "StepRecord",

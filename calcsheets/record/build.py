@@ -12,9 +12,19 @@ from ..expressions import Symbol, decimal_text
 from ..planning import Instance, Problem
 from ..quantities import Variable, catalogue
 from ..relations import Regime, Relation, Source
-from ..solving import Doubles, Outcome, StepOutcome, in_doubles, midpoint, working_precision
+from ..solving import (
+    Doubles,
+    Outcome,
+    RouteOutcome,
+    StepOutcome,
+    in_doubles,
+    midpoint,
+    other_routes,
+    working_precision,
+)
 from .build_courses import CourseRecords, used_courses
 from .build_results import ResultRecords
+from .build_routes import route_records, route_relations
 from .build_steps import Numbers, StepRecords
 from .checks import consistency_checks
 from .context import (
@@ -40,8 +50,9 @@ def build_record(outcome: Outcome, library_digest: str, changed: tuple[str, ...]
         ContradictoryInputs: if a relation that was not needed disagrees with the values.
     """
     doubles = in_doubles(outcome)
+    routes = other_routes(outcome)
     with working_precision():
-        return _Builder(outcome, doubles).record(library_digest, changed)
+        return _Builder(outcome, doubles, routes).record(library_digest, changed)
 
 
 def program_name() -> str:
@@ -56,6 +67,7 @@ def program_name() -> str:
 class _Builder:
     outcome: Outcome
     doubles: Doubles
+    routes: tuple[RouteOutcome, ...]
 
     @property
     def problem(self) -> Problem:
@@ -76,6 +88,8 @@ class _Builder:
         step_records = StepRecords(self.outcome, self.doubles, where)
         made = tuple(step_records.step(step) for step in self.outcome.steps)
         results = ResultRecords(self.outcome, self.doubles, where, made)
+        wanted = enumerate(self.brief.wanted, start=1)
+        result_records = tuple(results.result(item, number) for number, item in wanted)
         relations = tuple(self._relations())
         courses = CourseRecords(self.outcome, self.doubles, step_records.operand)
         return Record(
@@ -92,11 +106,9 @@ class _Builder:
             ),
             inputs=tuple(self._input(given, inputs[given.variable]) for given in givens),
             steps=made,
-            results=tuple(
-                results.result(wanted, number)
-                for number, wanted in enumerate(self.brief.wanted, start=1)
-            ),
+            results=result_records,
             courses=tuple(courses.courses()),
+            routes=route_records(self.outcome, self.routes, where, result_records),
             checks=tuple(consistency_checks(self.outcome)),
             relations=relations,
             assumptions=tuple(
@@ -128,6 +140,8 @@ class _Builder:
             used.update(variable for variable in self._limit_variables(step))
         for course in used_courses(self.outcome):
             used.update(course.binding.values())
+        for route in self.routes:
+            used.update(variable for step in route.steps for variable in step.edge.inputs)
         return used
 
     def _limit_variables(self, step: StepOutcome) -> Iterator[Variable]:
@@ -174,6 +188,8 @@ class _Builder:
             regime = other.regime_variable
             if regime is not None and regime in self.outcome.regimes:
                 found.setdefault(other.relation.name, other.relation)
+        for relation in route_relations(self.routes):
+            found.setdefault(relation.name, relation)
         for item in found.values():
             yield _relation(item)
 

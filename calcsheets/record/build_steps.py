@@ -87,7 +87,7 @@ class StepRecords:
             title=quantity.title,
             place=self.outcome.problem.title(step.edge.target),
             relation=source.relation.name,
-            operands=self._operands(source, source.relation.symbols, step.edge.unknown),
+            operands=self.operands(source, source.relation.symbols, step.edge.unknown),
             method=solution.method,
             moves=tuple(_move(move) for move in solution.moves),
             solved=solution.solved,
@@ -110,7 +110,7 @@ class StepRecords:
             alternatives=tuple(self._alternatives(source, step)),
             test=None,
             combination=tuple(self._members(source)),
-            dropped=self._operands(source, (s for s, v in source.dropped if v in self.where), None),
+            dropped=self.operands(source, (s for s, v in source.dropped if v in self.where), None),
         )
 
     def _regime_step(self, step: StepOutcome, source: RegimeInstance) -> StepRecord:
@@ -125,7 +125,7 @@ class StepRecords:
             title=regime.title,
             place=self.outcome.problem.title(step.edge.target),
             relation=regime.name,
-            operands=self._operands(source, regime.symbols, None),
+            operands=self.operands(source, regime.symbols, None),
             method="regime",
             moves=(),
             solved=None,
@@ -178,12 +178,13 @@ class StepRecords:
                 solved=member.solved,
             )
 
-    def _operands(
+    def operands(
         self,
         source: Instance | RegimeInstance,
         symbols: Iterable[Symbol],
         unknown: Symbol | None,
     ) -> tuple[Operand, ...]:
+        """Return every known quantity among the symbols of a relation."""
         found = []
         for symbol in symbols:
             if symbol == unknown:
@@ -224,7 +225,7 @@ class StepRecords:
             for symbol in dict.fromkeys(named)
             if symbol not in source.relation.symbols and source.place.variable(symbol) in self.where
         ]
-        return self._operands(source, further, None)
+        return self.operands(source, further, None)
 
     def _limits(self, source: Instance) -> Iterator[LimitRecord]:
         for limit in source.relation.limits:
@@ -263,7 +264,7 @@ class StepRecords:
                     _uses(other),
                     other.relation.name,
                     isolation.solved,
-                    self._operands(other, other.relation.symbols, unknown),
+                    self.operands(other, other.relation.symbols, unknown),
                     integrals,
                 )
 

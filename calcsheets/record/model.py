@@ -16,6 +16,7 @@ from .context import (
     StationRecord,
 )
 from .course_model import CourseRecord
+from .route_model import RouteRecord
 from .step_model import StepRecord
 
 SCHEMA = "calcsheets-record/1"
@@ -216,6 +217,7 @@ class Record:
         steps: every step, each after those that it needs.
         results: every wanted result.
         courses: how processes run from their start to their end.
+        routes: another route to each result that is a number and no input.
         checks: relations that were not needed, evaluated.
         relations: relations and tests used, by name.
         assumptions: of the brief.
@@ -237,6 +239,7 @@ class Record:
     steps: tuple[StepRecord, ...]
     results: tuple[ResultRecord, ...]
     courses: tuple[CourseRecord, ...]
+    routes: tuple[RouteRecord, ...]
     checks: tuple[ConsistencyRecord, ...]
     relations: tuple[RelationRecord, ...]
     assumptions: tuple[AssumptionRecord, ...]

@@ -18,6 +18,7 @@ from .doubles import CourseErrors, Doubles, TableErrors, in_doubles
 from .moves import ACTIONS, Isolation, Move, isolate, occurrences
 from .quadrature import Table, tables_of
 from .question import Question, compare, residual_of, size_of
+from .routes import RouteOutcome, other_routes
 from .run import Outcome, RegimeOutcome, StepOutcome
 from .solve import OtherRoot, Solution, solve
 
@@ -39,6 +40,7 @@ __all__ = [
     "OutsideDomainError",
     "Question",
     "RegimeOutcome",
+    "RouteOutcome",
     "Solution",
     "StepOutcome",
     "Table",
@@ -53,6 +55,7 @@ __all__ = [
     "lay_out",
     "midpoint",
     "occurrences",
+    "other_routes",
     "residual_of",
     "size_of",
     "solve",

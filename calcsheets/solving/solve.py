@@ -256,13 +256,15 @@ def _choose(question: Question, roots: tuple[Ball, ...]) -> tuple[Ball, tuple[Ot
 def _against(question: Question, value: Ball) -> tuple[tuple[bool, str], ...]:
     """Why a value is not the one that is meant: whether that decides, and the reason."""
     found = [
+        (True, f"not on the stated branch, {branch.name}")
+        for branch in question.relation.branches
+        if branch.name == question.branch and not may_hold(branch.condition, question, value)
+    ]
+    found += [
         (limit.essential, f"outside a limit: {limit.reason}")
         for limit in (*question.limits, *question.relation.limits)
         if not may_hold(limit.condition, question, value)
     ]
-    for branch in question.relation.branches:
-        if branch.name == question.branch and not may_hold(branch.condition, question, value):
-            found.append((True, f"not on the stated branch, {branch.name}"))
     return tuple(sorted(found, key=lambda objection: not objection[0]))
 
 

@@ -18,6 +18,7 @@ from ..templates import template_environment, templates_folder
 from . import views
 from .cards import cards
 from .courses import course_tables
+from .routes import route_lines
 
 
 @dataclass(frozen=True)
@@ -87,6 +88,7 @@ def render_html(record: Record, paper: str = "A4") -> str:
         cards=cards(record, size.column),
         courses=course_tables(record, size.column),
         outside=tuple(step for step in record.steps if not step.within_limits),
+        routes=route_lines(record, size.column),
         checks=views.check_lines(record),
         sources=views.source_lines(record),
     )

@@ -130,10 +130,14 @@ def assumption_lines(record: Record) -> tuple[AssumptionLine, ...]:
 
 
 def source_lines(record: Record) -> tuple[SourceLine, ...]:
-    """Return every relation that a step uses, with its source."""
+    """Return every relation that a step or another route uses, with its source."""
     found: dict[str, list[int]] = {}
     for step in record.steps:
-        found.setdefault(step.relation, []).append(step.number)
+        for name in dict.fromkeys((step.relation, *(m.relation for m in step.combination))):
+            found.setdefault(name, []).append(step.number)
+    for route in record.routes:
+        for own in route.steps:
+            found.setdefault(own.relation, [])
     return tuple(
         SourceLine(relation, known_text(relation), tuple(steps))
         for relation, steps in ((record.relation(name), found[name]) for name in found)

@@ -9,13 +9,23 @@ from typing import Any
 
 from ...record import Record
 from .calculation import write_calculation
-from .cells import CALCULATION, COURSE, INPUTS, INTEGRALS, RESULTS, ROOTS, place_cells
+from .cells import (
+    CALCULATION,
+    COURSE,
+    INPUTS,
+    INTEGRALS,
+    OTHER_ROUTES,
+    RESULTS,
+    ROOTS,
+    place_cells,
+)
 from .course import write_courses
 from .inputs import write_inputs
 from .integrals import has_integrals, integral_cells, write_integrals
 from .page import FormulaCell, Page, make_styles
 from .results import write_results
 from .roots import root_cells, root_steps, write_roots
+from .routes import write_routes
 from .texts import write_assumptions, write_cover, write_references
 
 _OPTIONS = {
@@ -56,6 +66,7 @@ def make_workbook(record: Record, paper: str = "A4") -> Workbook:
         names += [ROOTS] if root_steps(record) else []
         names += [COURSE] if record.courses else []
         names += [INTEGRALS] if has_integrals(record) else []
+        names += [OTHER_ROUTES] if record.routes else []
         names += ["References"]
         pages = {name: Page(book, styles, name, record, paper) for name in names}
         cells = place_cells(record)
@@ -71,6 +82,8 @@ def make_workbook(record: Record, paper: str = "A4") -> Workbook:
             write_courses(pages[COURSE], record, cells, integrals.courses)
         if INTEGRALS in pages:
             write_integrals(pages[INTEGRALS], record, cells)
+        if OTHER_ROUTES in pages:
+            write_routes(pages[OTHER_ROUTES], record, cells)
         write_references(pages["References"], record)
     formulas = tuple(cell for page in pages.values() for cell in page.formulas)
     return Workbook(buffer.getvalue(), formulas)

@@ -11,7 +11,7 @@ from ...expressions import Symbol
 from ...record import Operand, Record
 
 INPUTS, CALCULATION, RESULTS = "Inputs", "Calculation", "Results"
-ROOTS, COURSE, INTEGRALS = "Roots", "Course", "Integrals"
+ROOTS, COURSE, INTEGRALS, OTHER_ROUTES = "Roots", "Course", "Integrals", "Routes"
 FIRST_ROW = 4
 INPUT_TYPED, INPUT_SI = 4, 6
 STEP_VALUE = 4
