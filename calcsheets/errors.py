@@ -186,15 +186,20 @@ class AmbiguousRegime(PlanningError):
         place: name of the process.
         agreeing: the regimes whose own test agrees.
         tried: all regimes that were tried.
+        answers: what is wanted in each of the agreeing regimes, as text; may be left out.
     """
 
     place: str
     agreeing: tuple[str, ...]
     tried: tuple[str, ...]
+    answers: tuple[str, ...] = ()
 
     def __str__(self) -> str:
         if self.agreeing:
             found = " and ".join(self.agreeing)
+            if self.answers:
+                each = zip(self.agreeing, self.answers, strict=True)
+                found = "; ".join(f"{regime}: {answer}" for regime, answer in each)
             return (
                 f"process {self.place}: the inputs agree with more than one regime ({found}). "
                 f'Which is meant? State it as regime = "{self.agreeing[0]}" in its [[path]] entry.'

@@ -75,6 +75,11 @@ CASES: list[tuple[CalcsheetsError, str]] = [
         'Which is meant? State it as regime = "choked" in its [[path]] entry.',
     ),
     (
+        AmbiguousRegime("nozzle", ("a", "b"), ("a", "b", "c"), ("p@x = 1 Pa", "p@x = 2 Pa")),
+        "process nozzle: the inputs agree with more than one regime (a: p@x = 1 Pa; b: p@x = "
+        '2 Pa). Which is meant? State it as regime = "a" in its [[path]] entry.',
+    ),
+    (
         AmbiguousRegime("nozzle", (), ("choked", "not choked")),
         "process nozzle: each regime was tried (choked, not choked) and none agrees with its own "
         "test. Check the inputs of this process.",

@@ -250,7 +250,7 @@ def _check_leg(table: Table, leg: Leg, stations: list[str], before: list[Leg]) -
         outcome
         for regime in load_library().regimes
         if leg.process in regime.offered_by
-        for outcome in (regime.when_true, regime.when_false)
+        for outcome in regime.outcomes
     ]
     if leg.regime and leg.regime not in regimes:
         choice = f"Choose {either(regimes)}" if regimes else "Remove regime"

@@ -147,7 +147,7 @@ def _leg(form: Form) -> Schema:
             outcome
             for regime in library.regimes
             if process.name in regime.offered_by
-            for outcome in (regime.when_true, regime.when_false)
+            for outcome in regime.outcomes
         ]
         through: Schema = {"required": ["through"]}
         then: Schema = through if process.needs_through else {"not": through}

@@ -83,11 +83,20 @@ def evaluate_decimal(expr: Expr, values: Mapping[Symbol, Any]) -> Any:
     return found
 
 
-def holds_decimal(condition: Condition, values: Mapping[Symbol, Any]) -> bool:
-    """Whether a condition holds; sides that agree to the last digits of a double are equal."""
+def holds_decimal(
+    condition: Condition, values: Mapping[Symbol, Any], equal_within: float = 2e-15
+) -> bool:
+    """Return whether a condition holds.
+
+    Args:
+        condition: the condition.
+        values: value of each of its symbols.
+        equal_within: sides that differ by no more of the right one count as equal; as it is,
+            those that agree to the last digits of a double.
+    """
     left = evaluate_decimal(condition.left, values)
     right = evaluate_decimal(condition.right, values)
-    if abs(left - right) <= 1e-15 * (abs(left) + abs(right)):
+    if abs(left - right) <= equal_within * abs(right):
         return condition.comparison in ("<=", ">=")
     return bool(COMPARE[condition.comparison](left, right))
 

@@ -128,7 +128,9 @@ def _check_test(part: str, step: StepRecord, values: Mapping[Symbol, Any]) -> Fi
     test = step.test
     if test is None:
         return Finding(part, step.key, "not possible", "no regime test")
-    expected = test.when_true if holds_decimal(test.condition, values) else test.when_false
+    holds = (holds_decimal(case.condition, values, test.equal_within) for case in test.cases)
+    found = (case.outcome for case, true in zip(test.cases, holds, strict=True) if true)
+    expected = next(found, test.otherwise)
     verdict = "passed" if expected == test.outcome else "failed"
     return Finding(part, step.key, verdict, f"regime test evaluated again: {expected}")
 

@@ -13,6 +13,7 @@ from __future__ import annotations
 from collections.abc import Iterator, Mapping
 from dataclasses import dataclass
 from fractions import Fraction
+from types import MappingProxyType
 
 from ..errors import DefinitionError
 from ..quantities import Quantity, catalogue
@@ -225,6 +226,14 @@ class Condition:
     def symbols(self) -> tuple[Symbol, ...]:
         """Every symbol once, in order of appearance."""
         return tuple(dict.fromkeys((*symbols_in(self.left), *symbols_in(self.right))))
+
+    @property
+    def opposite(self) -> Condition:
+        """The condition that holds exactly where this one does not."""
+        return Condition(self.left, _OPPOSITE[self.comparison], self.right)
+
+
+_OPPOSITE: Mapping[str, str] = MappingProxyType({"<=": ">", "<": ">=", ">=": "<", ">": "<="})
 
 
 def as_expr(value: Expr | Plain) -> Expr:

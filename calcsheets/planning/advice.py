@@ -59,7 +59,7 @@ def _candidates(
     while layer:
         following: list[Variable] = []
         for instance in problem.instances:
-            if any(regimes.get(v, regime) != regime for v, regime in instance.regimes):
+            if not instance.holds_in(regimes, unless_open=True):
                 continue
             variables = list(instance.binding.values())
             for condition, _ in instance.regimes:

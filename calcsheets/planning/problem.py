@@ -83,22 +83,28 @@ class Instance:
         """A total order on instances."""
         return (self.rank, self.relation.name, self.place.name)
 
-    @property
-    def regime_variable(self) -> Variable | None:
-        """The regime on which the relation depends, if it does."""
-        if not self.relation.regime:
-            return None
-        return Variable("regime", self.place.roles[self.relation.regime_role])
+    def regime_at(self, role: str) -> Variable:
+        """Return the regime of the process that a role means here."""
+        return Variable("regime", self.place.roles[role])
 
-    @property
-    def regimes(self) -> tuple[tuple[Variable, str], ...]:
-        """Every regime on which it depends, with the outcome in which it holds."""
-        variable = self.regime_variable
-        own = [] if variable is None else [(variable, self.relation.regime)]
-        for role, outcome in self.relation.also:
-            own.append((Variable("regime", self.place.roles[role]), outcome))
+    @cached_property
+    def regimes(self) -> tuple[tuple[Variable, tuple[str, ...]], ...]:
+        """Every regime on which it depends, with the outcomes in which it holds."""
+        own = ((self.regime_at(role), outcomes) for role, outcomes in self.relation.uses)
         of_members = (use for member in self.members for use in member.instance.regimes)
         return tuple(dict.fromkeys((*own, *of_members)))
+
+    def holds_in(self, regimes: Mapping[Variable, str], unless_open: bool = False) -> bool:
+        """Whether it holds where regimes are as stated.
+
+        Args:
+            regimes: outcome of each regime that is decided.
+            unless_open: what an undecided regime counts as: whether it may still hold.
+        """
+        return all(
+            regimes[variable] in outcomes if variable in regimes else unless_open
+            for variable, outcomes in self.regimes
+        )
 
 
 @dataclass(frozen=True)
@@ -198,7 +204,7 @@ class Problem:
         for instance in self.instances:
             for limit in instance.relation.limits if instance.place.name in processes else ():
                 variable = _bounded(instance.place, limit.condition)
-                if variable is not None and limit.essential and not instance.relation.regime:
+                if variable is not None and limit.essential and not instance.relation.uses:
                     found.setdefault(variable, {}).setdefault(limit)
         return {variable: tuple(limits) for variable, limits in found.items()}
 

@@ -196,10 +196,9 @@ def offered_edges(
 ) -> Iterator[Edge]:
     """Yield every way from a relation or regime test to one of its variables; see :func:`reach`."""
     for instance in problem.instances:
-        uses = instance.regimes
-        if any(regimes.get(v, regime if open_regimes else None) != regime for v, regime in uses):
+        if not instance.holds_in(regimes, open_regimes):
             continue
-        before = tuple(variable for variable, _ in uses if variable not in assumed)
+        before = tuple(variable for variable, _ in instance.regimes if variable not in assumed)
         yield from _relation_edges(instance, before)
     for test in problem.regimes.values():
         inputs = tuple(dict.fromkeys(test.binding.values()))

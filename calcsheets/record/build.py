@@ -185,8 +185,7 @@ class _Builder:
             for relation in (member.instance.relation for member in members):
                 found.setdefault(relation.name, relation)
         for other in self.problem.instances:
-            regime = other.regime_variable
-            if regime is not None and regime in self.outcome.regimes:
+            if any(regime in self.outcome.regimes for regime, _ in other.regimes):
                 found.setdefault(other.relation.name, other.relation)
         for relation in route_relations(self.routes):
             found.setdefault(relation.name, relation)
@@ -195,7 +194,7 @@ class _Builder:
 
 
 def _relation(item: Relation | Regime) -> RelationRecord:
-    published = item.published if isinstance(item, Relation) else item.condition
+    published = item.published if isinstance(item, Relation) else item.conditions[0]
     return RelationRecord(
         name=item.name,
         title=item.title,

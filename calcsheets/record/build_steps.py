@@ -9,6 +9,7 @@ from ..errors import UntabulatedIntegral
 from ..expressions import Expr, Symbol
 from ..planning import Instance, RegimeInstance
 from ..quantities import Variable, catalogue
+from ..relations import EQUAL_WITHIN
 from ..solving import (
     Ball,
     Doubles,
@@ -38,6 +39,7 @@ from .step_model import (
     MemberRecord,
     MoveRecord,
     Operand,
+    RegimeCase,
     RegimeTest,
     RegimeUse,
     RootRecord,
@@ -147,11 +149,14 @@ class StepRecords:
             regimes=(),
             alternatives=(),
             test=RegimeTest(
-                condition=regime.condition,
-                left=midpoint(found.left),
-                right=midpoint(found.right),
-                when_true=regime.when_true,
-                when_false=regime.when_false,
+                cases=tuple(
+                    RegimeCase(condition, midpoint(left), midpoint(right), outcome)
+                    for (condition, outcome), (left, right) in zip(
+                        regime.cases, found.sides, strict=True
+                    )
+                ),
+                otherwise=regime.otherwise,
+                equal_within=float(EQUAL_WITHIN),
                 outcome=found.regime,
                 assumed=found.assumed,
             ),
@@ -271,7 +276,9 @@ class StepRecords:
     def _excludes(self, other: Instance, source: Instance) -> bool:
         """Whether a relation holds only in other regimes, all of which the sheet tests."""
         own = dict(source.regimes)
-        differs = any(own.get(v, outcome) != outcome for v, outcome in other.regimes)
+        differs = any(
+            not set(own.get(v, outcomes)) & set(outcomes) for v, outcomes in other.regimes
+        )
         return differs and all(v in self.where for v, _ in other.regimes)
 
     def _integrals_of(self, source: Instance, solved: Expr) -> tuple[IntegralRecord, ...] | None:
@@ -284,7 +291,7 @@ class StepRecords:
 
 
 def _uses(source: Instance) -> tuple[RegimeUse, ...]:
-    return tuple(RegimeUse(str(variable), outcome) for variable, outcome in source.regimes)
+    return tuple(RegimeUse(str(variable), outcomes) for variable, outcomes in source.regimes)
 
 
 def _move(move: Move) -> MoveRecord:

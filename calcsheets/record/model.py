@@ -183,7 +183,8 @@ class RelationRecord:
         name: identifier.
         title: in words.
         chapter: chapter of the library.
-        published: the equation or condition as published.
+        published: the equation as published; of a regime test the condition of its first case,
+            of which ``RegimeTest`` has all.
         source: where it is published.
         assumptions: what must be true.
         cautions: where someone can get hurt.

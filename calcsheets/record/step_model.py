@@ -157,10 +157,10 @@ class HalvingRecord:
 
 @dataclass(frozen=True)
 class RegimeUse:
-    """A regime in which a step holds: the key of the regime and its outcome."""
+    """A regime on which a step depends: its key, and the outcomes in which the step holds."""
 
     key: str
-    outcome: str
+    outcomes: tuple[str, ...]
 
 
 @dataclass(frozen=True)
@@ -183,24 +183,37 @@ class AlternativeRecord:
 
 
 @dataclass(frozen=True)
-class RegimeTest:
-    """A regime test with its outcome.
+class RegimeCase:
+    """One case of a regime test.
 
     Attributes:
         condition: the test.
         left: value of the left side.
         right: value of the right side.
-        when_true: regime if it holds.
-        when_false: regime if it does not.
-        outcome: the regime.
-        assumed: whether the regime was tried first and confirmed by the test afterwards.
+        outcome: regime if it holds and none before it does.
     """
 
     condition: Condition
     left: float
     right: float
-    when_true: str
-    when_false: str
+    outcome: str
+
+
+@dataclass(frozen=True)
+class RegimeTest:
+    """A regime test with its outcome.
+
+    Attributes:
+        cases: the cases, in the order in which they are tested.
+        otherwise: regime if none of them holds.
+        equal_within: sides that differ by no more of the right one count as equal.
+        outcome: the regime.
+        assumed: whether the regime was tried first and confirmed by the test afterwards.
+    """
+
+    cases: tuple[RegimeCase, ...]
+    otherwise: str
+    equal_within: float
     outcome: str
     assumed: bool
 

@@ -4,6 +4,7 @@ from .course import INTERVALS, Case, Course, CourseColumn, Words
 from .library import STATION_KINDS, Library, load_library
 from .mixtures import mixture_relations
 from .relation import (
+    EQUAL_WITHIN,
     Branch,
     Chapter,
     Limit,
@@ -17,6 +18,7 @@ from .relation import (
 )
 
 __all__ = [
+    "EQUAL_WITHIN",
     "INTERVALS",
     "STATION_KINDS",
     "Branch",

@@ -166,8 +166,7 @@ CHAPTER = Chapter(
         Regime(
             "critical_throat",
             "Critical throat: back pressure against the largest permissible one",
-            (p_2 / p_0).at_most(r_max),
-            CRITICAL,
+            (((p_2 / p_0).at_most(r_max), CRITICAL),),
             NOT_CRITICAL,
             CRITICAL_NOZZLES,
             iso_9300(),

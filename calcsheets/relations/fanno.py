@@ -245,8 +245,7 @@ CHAPTER = Chapter(
         Regime(
             "fanno_choking",
             "Choking at the open end of the duct: surroundings against the sonic pressure",
-            _CHOKES,
-            CHOKED,
+            ((_CHOKES, CHOKED),),
             NOT_CHOKED,
             (FANNO_END,),
             shapiro("ch. 6"),

@@ -237,8 +237,7 @@ CHAPTER = Chapter(
         Regime(
             "nozzle_ratio_range",
             "Range of the diameter ratio, for the uncertainty of C of an ISA 1932 nozzle",
-            beta.at_most(number("0.6")),
-            LOW_RATIO,
+            ((beta.at_most(number("0.6")), LOW_RATIO),),
             HIGH_RATIO,
             (ISA_1932,),
             iso_5167(3, known="from memory"),

@@ -191,8 +191,7 @@ CHAPTER = Chapter(
         Regime(
             "isothermal_choking",
             "Limit at the open end of the duct: surroundings against the limiting pressure",
-            (p_2 / p_T1).at_most(1),
-            CHOKED,
+            (((p_2 / p_T1).at_most(1), CHOKED),),
             NOT_CHOKED,
             (ISOTHERMAL_END,),
             _BOOK,

@@ -104,8 +104,9 @@ class Library:
             for relation in self.relations
         ]
         lines += [
-            f"{regime.name} {expression_to_mathml(regime.condition)} {regime.source}"
+            f"{regime.name} {expression_to_mathml(condition)} {outcome} {regime.source}"
             for regime in self.regimes
+            for condition, outcome in regime.cases
         ]
         lines += [
             f"{course.name} {expression_to_mathml(statement)} {course.source}"

@@ -308,8 +308,7 @@ CHAPTER = Chapter(
         Regime(
             "pipe_size",
             "Size of the pipe: from 71.12 mm the equation for C has no term of its own for it",
-            (D / inch).at_least(number("2.8")),
-            LARGE_PIPE,
+            (((D / inch).at_least(number("2.8")), LARGE_PIPE),),
             SMALL_PIPE,
             ORIFICE_PLATES,
             iso_5167(2),
@@ -317,8 +316,7 @@ CHAPTER = Chapter(
         Regime(
             "diameter_ratio_range",
             "Range of the diameter ratio, for the uncertainty of C",
-            beta.at_most(number("0.6")),
-            LOW_RATIO,
+            ((beta.at_most(number("0.6")), LOW_RATIO),),
             HIGH_RATIO,
             (PLATE_UNCERTAINTY,),
             iso_5167(2, "5.3.3.1", "read in the source"),

@@ -92,8 +92,7 @@ CHAPTER = Chapter(
         Regime(
             "choking",
             "Choking of the orifice: back pressure against the critical pressure ratio",
-            (p / p_0).at_most(CRITICAL_RATIO),
-            CHOKED,
+            (((p / p_0).at_most(CRITICAL_RATIO), CHOKED),),
             NOT_CHOKED,
             (ORIFICE,),
             naca_1135(),

@@ -213,8 +213,7 @@ CHAPTER = Chapter(
         Regime(
             "rayleigh_choking",
             "Thermal choking at the open end: surroundings against the sonic pressure",
-            (p_2 / p_R1).at_most(1),
-            CHOKED,
+            (((p_2 / p_R1).at_most(1), CHOKED),),
             NOT_CHOKED,
             (RAYLEIGH_END,),
             shapiro("ch. 7"),

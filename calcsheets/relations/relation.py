@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
+from fractions import Fraction
 from typing import TYPE_CHECKING, Any
 
 from ..errors import DefinitionError
@@ -12,6 +13,13 @@ if TYPE_CHECKING:
     from .course import Course
 
 KNOWN = ("read in the source", "library", "common practice", "from memory", "brief")
+
+EQUAL_WITHIN = Fraction(1, 10**12)
+"""Sides of a regime test that differ by no more of the right one count as equal.
+
+At a border both regimes give one value, and a workbook, whose cells keep 15 to 17 digits, must
+come to the same outcome as arithmetic in many more.
+"""
 
 
 @dataclass(frozen=True)
@@ -85,9 +93,9 @@ class Relation:
         limits: conditions of its use.
         assumptions: what must be true for it to hold.
         cautions: where someone can get hurt.
-        regime: outcome of the regime test in which it holds; empty for all.
+        regime: outcome of the regime test in which it holds, or several; empty for all.
         regime_role: role of the process whose regime it is; empty for its own.
-        also: other regimes that must be as well: role of the process, and outcome.
+        also: other regimes that must be as well: role of the process, and outcome or outcomes.
         branches: ranges that part its roots.
         errs: in which direction it errs outside its assumptions, as a sentence.
         empirical: whether it rests on measurement and not on the model alone.
@@ -102,9 +110,9 @@ class Relation:
     limits: tuple[Limit, ...] = ()
     assumptions: tuple[str, ...] = ()
     cautions: tuple[str, ...] = ()
-    regime: str = ""
+    regime: str | tuple[str, ...] = ""
     regime_role: str = ""
-    also: tuple[tuple[str, str], ...] = ()
+    also: tuple[tuple[str, str | tuple[str, ...]], ...] = ()
     branches: tuple[Branch, ...] = ()
     errs: str = ""
     empirical: bool = False
@@ -129,17 +137,25 @@ class Relation:
         """Every symbol of the equation once, in order of appearance."""
         return self.published.symbols
 
+    @property
+    def uses(self) -> tuple[tuple[str, tuple[str, ...]], ...]:
+        """The regimes on which it depends: role of the process, and the outcomes that do."""
+        own = ((self.regime_role, self.regime),) if self.regime else ()
+        return tuple((role, _several(outcomes)) for role, outcomes in (*own, *self.also))
+
 
 @dataclass(frozen=True)
 class Regime:
-    """A test that decides between two mutually exclusive states of a process.
+    """Tests that decide, in their order, between mutually exclusive states of a process.
+
+    The regime is that of the first case whose condition holds, and the last one if none does.
+    Sides that differ by no more than ``EQUAL_WITHIN`` of the right one count as equal.
 
     Attributes:
         name: identifier, unique in the library.
         title: what is decided, in words.
-        condition: the test.
-        when_true: the regime if the condition holds.
-        when_false: the regime if it does not.
+        cases: each condition with the regime that it means.
+        otherwise: the regime if no condition holds.
         offered_by: processes that it decides.
         source: where the test is published.
         chapter: set by the chapter that holds it.
@@ -147,21 +163,45 @@ class Regime:
 
     name: str
     title: str
-    condition: Condition
-    when_true: str
-    when_false: str
+    cases: tuple[tuple[Condition, str], ...]
+    otherwise: str
     offered_by: tuple[str, ...]
     source: Source
     cautions: tuple[str, ...] = ()
     chapter: str = ""
 
     def __post_init__(self) -> None:
-        _require_homogeneous(self.name, self.condition.left, self.condition.right)
+        if not self.cases:
+            raise DefinitionError(f"regime test {self.name}", "it has no case to test")
+        for condition, _ in self.cases:
+            _require_homogeneous(self.name, condition.left, condition.right)
+        for outcome in self.outcomes:
+            if self.outcomes.count(outcome) > 1:
+                raise DefinitionError(f"regime test {self.name}", f'two cases come to "{outcome}"')
+
+    @property
+    def conditions(self) -> tuple[Condition, ...]:
+        """The condition of each case, in order."""
+        return tuple(condition for condition, _ in self.cases)
+
+    @property
+    def outcomes(self) -> tuple[str, ...]:
+        """Every regime, in the order of the cases."""
+        return (*(outcome for _, outcome in self.cases), self.otherwise)
 
     @property
     def symbols(self) -> tuple[Symbol, ...]:
-        """Every symbol of the test once, in order of appearance."""
-        return self.condition.symbols
+        """Every symbol of the tests once, in order of appearance."""
+        return tuple(dict.fromkeys(s for condition in self.conditions for s in condition.symbols))
+
+    def asks(self, outcomes: tuple[str, ...]) -> tuple[Condition, ...]:
+        """Return conditions that hold in each of some outcomes.
+
+        The cases before the first of them do not hold. If it is the only one, its own does.
+        """
+        first = min(self.outcomes.index(outcome) for outcome in outcomes)
+        before = tuple(condition.opposite for condition in self.conditions[:first])
+        return (*before, *self.conditions[first : first + 1]) if len(outcomes) == 1 else before
 
 
 @dataclass(frozen=True)
@@ -216,6 +256,10 @@ class Chapter:
     regimes: tuple[Regime, ...] = ()
     processes: tuple[Process, ...] = ()
     courses: tuple[Course, ...] = ()
+
+
+def _several(outcomes: str | tuple[str, ...]) -> tuple[str, ...]:
+    return (outcomes,) if isinstance(outcomes, str) else outcomes
 
 
 def _require_homogeneous(name: str, left: Expr, right: Expr) -> None:

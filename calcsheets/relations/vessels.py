@@ -128,8 +128,7 @@ CHAPTER = Chapter(
         Regime(
             "let_down_choking",
             "Choking until the end of the let-down",
-            (p_back / p_2).at_most(CRITICAL_RATIO),
-            CHOKED_THROUGHOUT,
+            (((p_back / p_2).at_most(CRITICAL_RATIO), CHOKED_THROUGHOUT),),
             UNCHOKED_AT_THE_END,
             LET_DOWNS,
             naca_1135(),
@@ -137,8 +136,7 @@ CHAPTER = Chapter(
         Regime(
             "filling_choking",
             "Choking until the end of the filling",
-            (p_2 / p_s).at_most(CRITICAL_RATIO),
-            CHOKED_THROUGHOUT,
+            (((p_2 / p_s).at_most(CRITICAL_RATIO), CHOKED_THROUGHOUT),),
             UNCHOKED_AT_THE_END,
             FILLINGS,
             naca_1135(),

@@ -45,9 +45,11 @@ def _chapter(chapter: Chapter) -> Iterator[str]:
     for regime in chapter.regimes:
         yield f"### {regime.title}"
         yield ""
-        yield f"    {plain_text(regime.condition)}"
+        for condition, outcome in regime.cases:
+            yield f"    {outcome} if {plain_text(condition)}"
+        yield f"    {regime.otherwise} if not"
         yield ""
-        yield f"- regime test `{regime.name}`: {regime.when_true} if so, else {regime.when_false}"
+        yield f"- regime test `{regime.name}`: the first line that holds"
         yield f"- offered by: {', '.join(regime.offered_by)}"
         yield f"- source: {regime.source}; known: {regime.source.known}"
         yield ""
@@ -75,8 +77,10 @@ def _relation(relation: Relation) -> Iterator[str]:
     yield f"- name: `{relation.name}`"
     yield f"- quantities: {'; '.join(_symbol(symbol) for symbol in relation.symbols)}"
     yield f"- offered by: {', '.join(relation.offered_by)}"
-    regimes = [relation.regime] if relation.regime else []
-    regimes += [f"{outcome} {ROLE_TITLES[role]}" for role, outcome in relation.also]
+    regimes = [
+        " or ".join(outcomes) + (f" {ROLE_TITLES[role]}" if role else "")
+        for role, outcomes in relation.uses
+    ]
     if regimes:
         yield f"- regime: {'; '.join(regimes)}"
     yield f"- source: {relation.source}; known: {relation.source.known}"

@@ -22,6 +22,7 @@ from ..planning import Instance, Problem, closing_inputs
 from ..quantities import Variable, catalogue
 from .balls import OutsideDomainError, working_precision
 from .consistency import is_consistent
+from .refusals import quantity_text
 from .run import Outcome, Run, StepOutcome, missing_in
 
 _MOST_ASSUMED = 4
@@ -123,9 +124,7 @@ def _by_assumption(
     regimes = unreachable.regimes
     tests = [variable for variable in sorted(problem.regimes) if variable not in regimes]
     tests = tests[:_MOST_ASSUMED]
-    choices = [
-        (problem.regimes[v].regime.when_true, problem.regimes[v].regime.when_false) for v in tests
-    ]
+    choices = [problem.regimes[test].regime.outcomes for test in tests]
     reachable = False
     agreeing: list[Outcome] = []
     questions: list[SeveralRoots] = []
@@ -153,9 +152,25 @@ def _by_assumption(
     if questions:
         raise questions[0]
     if reachable:
-        found = tuple(outcome.regimes[tests[0]] for outcome in distinct)
-        raise AmbiguousRegime(tests[0].place, found, choices[0])
+        raise _ambiguous(problem, tests, distinct)
     raise _not_enough(problem, regimes, unreachable.missing)
+
+
+def _ambiguous(problem: Problem, tests: list[Variable], found: list[Outcome]) -> AmbiguousRegime:
+    """The question which regime is meant, with the answers in each that agrees with itself."""
+    apart = [test for test in tests if len({outcome.regimes[test] for outcome in found}) > 1]
+    test = (*apart, *tests)[0]
+    agreeing: dict[str, str] = {}
+    for outcome in found:
+        answers = (
+            f"{variable} = " + quantity_text(catalogue()[variable.symbol], outcome.values[variable])
+            for variable in (wanted.variable for wanted in problem.brief.wanted)
+            if variable in outcome.values
+        )
+        agreeing.setdefault(outcome.regimes[test], ", ".join(answers))
+    shown = tuple(agreeing.values()) if all(agreeing.values()) else ()
+    tried = problem.regimes[test].regime.outcomes
+    return AmbiguousRegime(test.place, tuple(agreeing), tried, shown)
 
 
 def _stated_regimes(problem: Problem) -> dict[Variable, str]:
@@ -203,17 +218,20 @@ def _not_enough(
 def _against(problem: Problem, regimes: Mapping[Variable, str], missing: Variable) -> Iterator[str]:
     """Say which regimes stand against relations that would give a variable."""
     for instance in problem.instances:
-        condition = instance.regime_variable
-        if condition is None or missing not in instance.binding.values():
+        if missing not in instance.binding.values():
             continue
-        found, needed = regimes.get(condition), instance.relation.regime
-        offered = [
-            other.relation.regime
-            for other in problem.instances
-            if other.regime_variable == condition and missing in other.binding.values()
-        ]
-        if found is not None and found not in offered:
-            yield (
-                f"The regime of {condition.place} is {found}, and the library gives "
-                f"{missing.symbol} there only where it is {needed}."
-            )
+        for condition, outcomes in instance.regimes:
+            found = regimes.get(condition)
+            offered = {
+                outcome
+                for other in problem.instances
+                if missing in other.binding.values()
+                for regime, others in other.regimes
+                if regime == condition
+                for outcome in others
+            }
+            if found is not None and found not in offered:
+                yield (
+                    f"The regime of {condition.place} is {found}, and the library gives "
+                    f"{missing.symbol} there only where it is {' or '.join(outcomes)}."
+                )

@@ -31,7 +31,7 @@ def differences(outcome: Outcome) -> Iterator[tuple[Instance, float]]:
         if (
             instance.key not in used
             and all(variable in outcome.values for variable in instance.binding.values())
-            and all(outcome.regimes.get(v) == regime for v, regime in instance.regimes)
+            and instance.holds_in(outcome.regimes)
             and _applies(outcome, instance)
         ):
             yield instance, _difference(outcome, instance)

@@ -20,7 +20,7 @@ from ..expressions import (
     Sum,
     Symbol,
 )
-from ..relations import Limit, Relation
+from ..relations import EQUAL_WITHIN, Limit, Relation
 from .balls import Ball, evaluate
 
 
@@ -111,6 +111,18 @@ def compare(condition: Condition, values: Mapping[Symbol, Ball]) -> bool | None:
     if (left >= right) if strict else (left > right):
         return False
     return None
+
+
+def decide(condition: Condition, values: Mapping[Symbol, Ball]) -> bool:
+    """Return whether the condition of a regime test holds, by the rule of equal sides.
+
+    Sides count as equal where the enclosures do not part them, and within ``EQUAL_WITHIN``.
+    """
+    left, right = evaluate(condition.left, values), evaluate(condition.right, values)
+    within = abs(right) * EQUAL_WITHIN.numerator / EQUAL_WITHIN.denominator
+    if compare(condition, values) is None or abs(left - right) <= within:
+        return condition.comparison in ("<=", ">=")
+    return compare(condition, values) is True
 
 
 def _narrowed(

@@ -6,7 +6,7 @@ from collections.abc import Iterator, Mapping
 from dataclasses import dataclass, field, replace
 
 from ..errors import NoRoot, NotEnoughInputs, SeveralRoots, SolvingError
-from ..expressions import Condition, Symbol
+from ..expressions import Symbol
 from ..planning import (
     Edge,
     Field,
@@ -21,20 +21,22 @@ from ..quantities import Variable
 from ..relations import Limit
 from .balls import Ball, evaluate, exact_ball
 from .coupled import Combiner
-from .question import Question, compare
+from .question import Question, compare, decide
 from .refusals import limit_missed
 from .solve import Solution, solve
-
-_MOST_ASSUMED = 4
-_OPPOSITE = {"<=": ">", "<": ">=", ">=": "<", ">": "<="}
 
 
 @dataclass(frozen=True)
 class RegimeOutcome:
-    """A regime test with the balls of its sides."""
+    """A regime test with its outcome.
 
-    left: Ball
-    right: Ball
+    Attributes:
+        sides: balls of both sides of each case.
+        regime: the outcome.
+        assumed: whether it was taken for granted before it was tested.
+    """
+
+    sides: tuple[tuple[Ball, Ball], ...]
     regime: str
     assumed: bool
 
@@ -179,16 +181,17 @@ class Run:
             self.solved[edge.target] = outcome
 
     def _test(self, source: RegimeInstance) -> RegimeOutcome:
-        condition = source.regime.condition
         values = {symbol: self.values[variable] for symbol, variable in source.binding.items()}
-        holds = compare(condition, values)
-        if holds is None:  # the enclosures overlap: both sides are equal as far as is known
-            holds = condition.comparison in ("<=", ">=")
-        regime = source.regime.when_true if holds else source.regime.when_false
+        regime = next(
+            (outcome for condition, outcome in source.regime.cases if decide(condition, values)),
+            source.regime.otherwise,
+        )
         self.regimes.setdefault(source.variable, regime)
         return RegimeOutcome(
-            left=evaluate(condition.left, values),
-            right=evaluate(condition.right, values),
+            sides=tuple(
+                (evaluate(condition.left, values), evaluate(condition.right, values))
+                for condition in source.regime.conditions
+            ),
             regime=regime,
             assumed=source.variable in self.assumed,
         )
@@ -230,14 +233,13 @@ class Run:
         return solution
 
     def _limits(self, target: Variable, unknown: Symbol, source: Instance) -> Iterator[Limit]:
-        """The test of the regime in which a relation holds, and what processes ask."""
-        variable = source.regime_variable
-        if variable is not None and not source.relation.regime_role:
-            regime = self.problem.regimes[variable].regime
-            test = regime.condition
-            if source.relation.regime != regime.when_true:
-                test = Condition(test.left, _OPPOSITE[test.comparison], test.right)
-            yield Limit(test, f"this relation holds where it is {source.relation.regime}", True)
+        """The tests of the regime in which a relation holds, and what processes ask."""
+        for role, outcomes in source.relation.uses:
+            if role:
+                continue
+            reason = f"this relation holds where it is {' or '.join(outcomes)}"
+            for test in self.problem.regimes[source.regime_at(role)].regime.asks(outcomes):
+                yield Limit(test, reason, True)
         for limit in self.problem.demands.get(target, ()):
             yield replace(limit, condition=replace(limit.condition, left=unknown))
         yield from source.limits

@@ -4,13 +4,14 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from dataclasses import replace
+from fractions import Fraction
 from pathlib import Path
 
 import pytest
 
 import calcsheets
 from calcsheets.checking import Finding, check_record
-from calcsheets.expressions import Symbol
+from calcsheets.expressions import Condition, Number, Symbol
 from calcsheets.record import Record, StepRecord, read_record, record_bytes
 from tests.conftest import EXAMPLES, ROOT
 
@@ -87,6 +88,20 @@ def test_a_regime_that_its_test_does_not_give_is_found(record: Record) -> None:
 
     planted = with_step(record, "regime@orifice", turn)
     assert [finding.key for finding in failed(planted)] == ["regime@orifice"] * 2
+
+
+def test_cases_of_a_regime_test_in_another_order_are_found(record: Record) -> None:
+    """The first case that holds decides: another order is another test."""
+
+    def before(step: StepRecord) -> StepRecord:
+        assert step.test is not None
+        (case,) = step.test.cases
+        always = replace(case, condition=Condition(case.condition.left, ">=", Number(Fraction(0))))
+        return replace(step, test=replace(step.test, cases=(replace(always, outcome="x"), case)))
+
+    planted = with_step(record, "regime@orifice", before)
+    (finding,) = [item for item in failed(planted) if item.part.startswith("step")]
+    assert finding.reason == "regime test evaluated again: x"
 
 
 def test_a_wrong_conversion_of_an_input_is_found(record: Record) -> None:

@@ -79,7 +79,7 @@ def test_an_exact_number_is_written_exactly(value: str, text: str) -> None:
 STATEMENTS = [
     *(relation.published for relation in LIBRARY.relations),
     *(limit.condition for relation in LIBRARY.relations for limit in relation.limits),
-    *(regime.condition for regime in LIBRARY.regimes),
+    *(condition for regime in LIBRARY.regimes for condition in regime.conditions),
 ]
 
 

@@ -6,7 +6,7 @@ import random
 from collections.abc import Mapping
 from fractions import Fraction
 
-from calcsheets.expressions import Condition, Symbol
+from calcsheets.expressions import Symbol
 from calcsheets.relations import Limit, Relation, load_library
 from calcsheets.solving import (
     Ball,
@@ -45,7 +45,6 @@ RANGES: Mapping[str, tuple[float, float]] = {
     "q_dyn": (1e3, 1e5), "M_w4": (0.002, 0.05),
 }  # fmt: skip
 _TRIES = 20_000
-_OPPOSITE = {"<=": ">", "<": ">=", ">=": "<", ">": "<="}
 
 
 def range_of(symbol: Symbol) -> tuple[float, float]:
@@ -64,14 +63,12 @@ def regime_limits(relation: Relation) -> tuple[Limit, ...]:
     for regime in load_library().regimes:
         if not set(regime.offered_by) & set(relation.offered_by) or relation.regime_role:
             continue
-        if not set(regime.condition.symbols) <= set(relation.symbols):
-            continue
-        if relation.regime == regime.when_true:
-            found.append(Limit(regime.condition, relation.regime, essential=True))
-        elif relation.regime == regime.when_false:
-            test = regime.condition
-            opposite = Condition(test.left, _OPPOSITE[test.comparison], test.right)
-            found.append(Limit(opposite, relation.regime, essential=True))
+        for _, outcomes in relation.uses:
+            if not set(outcomes) <= set(regime.outcomes):
+                continue
+            for condition in regime.asks(outcomes):
+                if set(condition.symbols) <= set(relation.symbols):
+                    found.append(Limit(condition, " or ".join(outcomes), essential=True))
     return tuple(found)
 
 

@@ -96,7 +96,7 @@ def test_a_model_states_its_assumptions() -> None:
     [
         *(limit.condition for relation in LIBRARY.relations for limit in relation.limits),
         *(branch.condition for relation in LIBRARY.relations for branch in relation.branches),
-        *(regime.condition for regime in LIBRARY.regimes),
+        *(condition for regime in LIBRARY.regimes for condition in regime.conditions),
     ],
     ids=plain_text,
 )
@@ -179,7 +179,7 @@ def _decided(question: Question, hidden: Ball) -> Question:
         upper = midpoint(hidden) > float(middle.value)
         test = Condition(question.unknown, ">=" if upper else "<=", middle)
         return replace(question, limits=(Limit(test, "another input", essential=True),))
-    choked = next(regime.condition for regime in LIBRARY.regimes if regime.name == "choking")
+    choked = next(regime.conditions[0] for regime in LIBRARY.regimes if regime.name == "choking")
     values = {**question.values, question.unknown: hidden}
     below = compare(choked, values) is True
     comparison = choked.comparison if below else ">"

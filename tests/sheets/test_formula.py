@@ -13,6 +13,7 @@ from flint import arb
 from calcsheets.errors import DefinitionError
 from calcsheets.expressions import (
     CONSTANTS,
+    Condition,
     Constant,
     Expr,
     Function,
@@ -28,10 +29,11 @@ from calcsheets.expressions import (
     symbols,
     symbols_in,
 )
-from calcsheets.relations import load_library
+from calcsheets.relations import EQUAL_WITHIN, load_library
 from calcsheets.sheets.typesetting import plain_text
-from calcsheets.sheets.workbook.formula import comparison, formula
+from calcsheets.sheets.workbook.formula import comparison, decision, formula, is_one_of, joined
 from calcsheets.solving import evaluate, exact_ball, isolate, midpoint, working_precision
+from calcsheets.solving.question import decide
 
 a, b, c = symbols("p T rho")
 CELLS = {a: "A1", b: "B1", c: "C1"}
@@ -49,7 +51,7 @@ def all_expressions() -> list[Expr]:
             isolation = isolate(relation.published, unknown)
             found += [isolation.solved] if isolation else []
     for regime in LIBRARY.regimes:
-        found += [regime.condition.left, regime.condition.right]
+        found += [side for c in regime.conditions for side in (c.left, c.right)]
     return found
 
 
@@ -218,3 +220,26 @@ def _value(symbol: Symbol, chance: random.Random) -> float:
               "beta_d": (0.3, 0.7), "eps": (0.8, 0.9)}  # fmt: skip
     low, high = ranges.get(symbol.quantity, (0.5, 9.0))
     return chance.uniform(low, high)
+
+
+@pytest.mark.parametrize("compared", ["<", "<=", ">", ">="])
+@pytest.mark.parametrize(
+    "ratio", [0.5, 0.5 * (1 + 4e-13), 0.5 * (1 - 4e-13), 0.5 * (1 + 4e-12), 0.5 * (1 - 4e-12)]
+)
+def test_a_spreadsheet_decides_a_regime_as_the_solver_does(compared: str, ratio: float) -> None:
+    """Sides that are equal but for the last digits of a cell count as equal."""
+    condition = Condition(a, compared, number("0.5") * b)
+    values = {a: exact_ball(Fraction(ratio)), b: exact_ball(Fraction(3))}
+    with working_precision():
+        values[a] *= 3
+        expected = decide(condition, values)
+    text = decision(condition, CELLS, float(EQUAL_WITHIN))
+    (found,) = calculated([f'IF({text},"yes","no")'], {"A1": ratio * 3, "B1": 3.0})
+    assert found == ("yes" if expected else "no")
+
+
+def test_texts_are_compared_one_by_one() -> None:
+    assert is_one_of("A1", ["choked"]) == 'A1="choked"'
+    assert is_one_of("A1", ["a", "b"]) == 'OR(A1="a",A1="b")'
+    assert joined("AND", ["x", "y"]) == "AND(x,y)"
+    assert joined("AND", []) == ""

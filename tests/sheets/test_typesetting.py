@@ -53,7 +53,7 @@ RELATIONS = {relation.name: relation for relation in load_library().relations}
 STATEMENTS = [
     *(relation.published for relation in RELATIONS.values()),
     *(limit.condition for relation in RELATIONS.values() for limit in relation.limits),
-    *(regime.condition for regime in load_library().regimes),
+    *(condition for regime in load_library().regimes for condition in regime.conditions),
 ]
 a, b, c = symbols("p T rho")
 VALUES = {a: 1.3, b: 0.7, c: 2.1}

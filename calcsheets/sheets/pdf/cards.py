@@ -95,6 +95,25 @@ class LimitLine:
 
 
 @dataclass(frozen=True)
+class CaseLine:
+    """One case of a regime test with the values of both sides.
+
+    Attributes:
+        line: the condition, and the regime that it means.
+        substituted: the condition with numbers.
+        left: value of the left side.
+        right: value of the right side.
+        holds: whether it holds; ``None`` behind the case that decides.
+    """
+
+    line: Line
+    substituted: Markup
+    left: Markup
+    right: Markup
+    holds: bool | None
+
+
+@dataclass(frozen=True)
 class Card:
     """One step as printed."""
 
@@ -103,10 +122,11 @@ class Card:
     known: str
     symbol: Markup | None
     together: tuple[Line, ...]
-    published: Line
+    published: Line | None
+    cases: tuple[CaseLine, ...]
+    equal_within: Markup | None
     lines: tuple[Line, ...]
-    substituted: Markup
-    sides: tuple[Markup, ...]
+    substituted: Markup | None
     value: Markup | None
     residual: Markup | None
     bracket: tuple[Markup, ...]
@@ -137,19 +157,43 @@ def _card(record: Record, step: StepRecord, width: float) -> Card:
         known=known_text(relation),
         symbol=None if step.test else symbol_html(step.symbol),
         together=tuple(_together(record, step, width)),
-        published=_line(f"{step.number}.1", published, width),
+        published=None if step.test else _line(f"{step.number}.1", published, width),
+        cases=tuple(_cases(step, width)),
+        equal_within=number_html(significant(step.test.equal_within, 2)) if step.test else None,
         lines=lines,
-        substituted=_substituted(step, relation, width),
-        sides=_sides(step.test.condition, step.test.left, step.test.right) if step.test else (),
+        substituted=None if step.test else _substituted(step, published, width),
         value=None if step.value is None else value_html(step.value, step.unit),
         residual=number_html(significant(step.residual, 2)) if step.residual else None,
         bracket=tuple(value_html(end, step.unit) for end in step.bracket),
         other_roots=tuple((value_html(r.value, step.unit), r.reason) for r in step.other_roots),
         limits=tuple(_limit(limit, width) for limit in step.limits),
         integrals=integral_lines(step, width),
-        where=(*_operands(step), *_running(step), *_constants(published)),
+        where=(*_operands(step), *_running(step), *_constants(_stated(step, published))),
         results=tuple(line for line in result_lines(record) if line.result.step == step.number),
     )
+
+
+def _stated(step: StepRecord, published: Equation | Condition) -> tuple[Equation | Condition, ...]:
+    """What the step states: its equation, or every condition of its regime test."""
+    return tuple(case.condition for case in step.test.cases) if step.test else (published,)
+
+
+def _cases(step: StepRecord, width: float) -> Iterator[CaseLine]:
+    """The cases of a regime test; the outcome says which of them decides."""
+    if step.test is None:
+        return
+    decided = False
+    for number, case in enumerate(step.test.cases, start=1):
+        holds = None if decided else case.outcome == step.test.outcome
+        decided = decided or bool(holds)
+        left, right = _sides(case.condition, case.left, case.right)
+        yield CaseLine(
+            line=_line(f"{step.number}.{number}", case.condition, width, f"{case.outcome} if"),
+            substituted=_substituted(step, case.condition, width),
+            left=left,
+            right=right,
+            holds=holds,
+        )
 
 
 def _together(record: Record, step: StepRecord, width: float) -> Iterator[Line]:
@@ -190,13 +234,15 @@ def _line(
 
 
 def _numbers(
-    step: StepRecord, relation: RelationRecord
+    step: StepRecord, stated: Equation | Condition
 ) -> dict[Symbol | Constant, tuple[NumberText, str]]:
     """The number of every operand, and of every constant but π."""
     found: dict[Symbol | Constant, tuple[NumberText, str]] = {
-        operand.symbol: (working(operand.value), operand.unit) for operand in step.operands
+        operand.symbol: (working(operand.value), operand.unit)
+        for operand in step.operands
+        if step.test is None or operand.symbol in stated.symbols
     }
-    for constant in _constants_of((relation.published.left, relation.published.right)):
+    for constant in _constants_of((stated.left, stated.right)):
         definition = CONSTANTS[constant.name]
         if definition.value is not None:
             unit = coherent_unit(definition.dimension)
@@ -204,12 +250,12 @@ def _numbers(
     return found
 
 
-def _substituted(step: StepRecord, relation: RelationRecord, width: float) -> Markup:
+def _substituted(step: StepRecord, stated: Equation | Condition, width: float) -> Markup:
     """Numbers in the place of symbols: in the solved form, or in both sides of what is published.
 
     A root has no solved form, so the value found is put into the published one.
     """
-    numbers = _numbers(step, relation)
+    numbers = _numbers(step, stated)
     values = ", ".join(
         f"{symbol_text(symbol)} = {number.with_unit(unit)}"
         for symbol, (number, unit) in numbers.items()
@@ -222,8 +268,8 @@ def _substituted(step: StepRecord, relation: RelationRecord, width: float) -> Ma
         found = (working(step.value), step.unit)
         numbers[step.symbol] = found
         values = f"{values}, {symbol_text(step.symbol)} = {found[0].with_unit(found[1])}"
-    words = f"{plain_text(relation.published)} with {values}"
-    return _picture_of(substituted_mathml(relation.published, numbers), words, width)
+    words = f"{plain_text(stated)} with {values}"
+    return _picture_of(substituted_mathml(stated, numbers), words, width)
 
 
 def _picture_of(mathml: str, words: str, width: float) -> Markup:
@@ -266,8 +312,8 @@ def _running(step: StepRecord) -> Iterator[Where]:
         )
 
 
-def _constants(published: Equation | Condition) -> Iterator[Where]:
-    for constant in _constants_of((published.left, published.right)):
+def _constants(stated: Iterable[Equation | Condition]) -> Iterator[Where]:
+    for constant in _constants_of(side for item in stated for side in (item.left, item.right)):
         definition = CONSTANTS[constant.name]
         if definition.value is None:
             continue

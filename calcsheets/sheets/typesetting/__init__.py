@@ -12,6 +12,7 @@ from .presentation import (
     substituted_mathml,
     symbol_mathml,
 )
+from .regimes import regime_words, test_text
 
 __all__ = [
     "Drawing",
@@ -23,11 +24,13 @@ __all__ = [
     "number_mathml",
     "plain_text",
     "presentation_mathml",
+    "regime_words",
     "significant",
     "substituted_mathml",
     "superscript",
     "symbol_mathml",
     "symbol_text",
+    "test_text",
     "typed",
     "unit_text",
 ]

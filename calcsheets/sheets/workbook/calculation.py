@@ -6,9 +6,9 @@ from collections.abc import Mapping, Sequence, Set
 
 from ...expressions import Condition, Equation, Expr, Integral, Symbol
 from ...record import LimitRecord, Operand, Record, RegimeUse, StepRecord
-from ..typesetting import plain_text, symbol_text, unit_text
+from ..typesetting import plain_text, symbol_text, test_text, unit_text
 from .cells import CALCULATION, FIRST_ROW, STEP_VALUE, Cells, reference
-from .formula import comparison, formula
+from .formula import comparison, decision, formula, is_one_of, joined
 from .page import Column, Page, double_size
 
 _COLUMNS = (
@@ -76,7 +76,8 @@ def _row(
     page.text(row, 5, unit_text(step.unit) if step.unit else "")
     page.text(row, 6, f"{relation.title}\n{relation.source}")
     together = [plain_text(member.published) for member in step.combination]
-    shown = [*together, plain_text(relation.published), _solved_text(step)]
+    own = [] if step.test else [plain_text(relation.published)]
+    shown = [*together, *own, _solved_text(step)]
     page.text(row, 7, "\n".join(shown))
     page.text(row, 8, "; ".join(plain_text(limit.condition) for limit in step.limits))
     value = reference(CALCULATION, row, STEP_VALUE)
@@ -97,7 +98,7 @@ def _row(
 
 def _solved_text(step: StepRecord) -> str:
     if step.test is not None:
-        return f"{step.test.when_true} if so, else {step.test.when_false}"
+        return test_text(step.test)
     if step.solved is None:
         return ROOT_TEXT
     return plain_text(Equation(step.symbol, step.solved))
@@ -107,8 +108,11 @@ def _test_formula(step: StepRecord, cells: Cells) -> str:
     test = step.test
     if test is None:
         raise ValueError(f"step {step.number} is no regime test")
-    condition = comparison(test.condition, cells.of(step.operands))
-    return f'IF({condition},"{test.when_true}","{test.when_false}")'
+    text = f'"{test.otherwise}"'
+    for case in reversed(test.cases):
+        holds = decision(case.condition, cells.of(step.operands), test.equal_within)
+        text = f'IF({holds},"{case.outcome}",{text})'
+    return text
 
 
 def _value_formula(
@@ -130,16 +134,17 @@ def _value_formula(
 
     def holds(uses: Sequence[RegimeUse]) -> str:
         watched = [use for use in uses if use.key in cells.by_key and use.key not in assumed]
-        tests = [f'{cells.by_key[use.key]}="{use.outcome}"' for use in watched]
-        return f"AND({','.join(tests)})" if len(tests) > 1 else "".join(tests)
+        return joined("AND", [is_one_of(cells.by_key[use.key], use.outcomes) for use in watched])
 
     text = roots[step.number] if step.solved is None else closed(step.solved, step.operands, 0)
     if not holds(step.regimes):
         return text
-    taken = {use.key: use.outcome for use in step.regimes if use.key in assumed}
+    taken = {use.key: use.outcomes for use in step.regimes if use.key in assumed}
     other = "NA()"
     for number, alternative in enumerate(step.alternatives, start=1):
-        if all(taken.get(use.key, use.outcome) == use.outcome for use in alternative.regimes):
+        if all(
+            set(taken.get(use.key, use.outcomes)) & set(use.outcomes) for use in alternative.regimes
+        ):
             value = closed(alternative.solved, alternative.operands, number)
             other = f"IF({holds(alternative.regimes)},{value},{other})"
     return f"IF({holds(step.regimes)},{text},{other})"

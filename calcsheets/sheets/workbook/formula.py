@@ -8,7 +8,7 @@ before a power (``-2^2``), so powers are ``POWER`` and a negative is ``0-(x)``.
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 from fractions import Fraction
 from types import MappingProxyType
 
@@ -116,6 +116,36 @@ def comparison(
     left = formula(condition.left, cells, constants)
     right = formula(condition.right, cells, constants)
     return f"{left}{condition.comparison}{right}"
+
+
+def decision(condition: Condition, cells: Mapping[Symbol, str], equal_within: float) -> str:
+    """Return the condition of a regime test as formula text that is TRUE where it holds.
+
+    Sides that differ by no more than a part ``equal_within`` of the right one count as equal,
+    so that every engine decides alike.
+
+    Args:
+        condition: the condition.
+        cells: cell reference or defined name of each of its symbols, in coherent SI.
+        equal_within: that part.
+
+    Raises:
+        DefinitionError: if a symbol has no cell.
+    """
+    left, right = formula(condition.left, cells), formula(condition.right, cells)
+    within = f"{equal_within:G}*ABS({right})"
+    slack = within if condition.comparison in ("<=", ">") else f"0-{within}"
+    return f"{left}-{right}{condition.comparison}{slack}"
+
+
+def is_one_of(cell: str, texts: Sequence[str]) -> str:
+    """Return formula text that is TRUE where a cell holds one of some texts."""
+    return joined("OR", [f'{cell}="{text}"' for text in texts])
+
+
+def joined(function: str, tests: Sequence[str]) -> str:
+    """Return conditions joined by ``AND`` or ``OR``; one stands alone, none is empty."""
+    return f"{function}({','.join(tests)})" if len(tests) > 1 else "".join(tests)
 
 
 def exact_number(value: Fraction) -> str:

@@ -7,7 +7,7 @@ from dataclasses import dataclass
 
 from ...expressions import Integral
 from ...record import CourseRecord, IntegralRecord, Operand, Record, StepRecord, SumRecord
-from ..typesetting import plain_text, symbol_text
+from ..typesetting import plain_text, regime_words, symbol_text
 from .cells import FIRST_ROW, Cells
 from .course import course_cells, running_cells
 from .page import Page, double_size
@@ -98,7 +98,7 @@ def _blocks(record: Record, cells: Cells) -> Iterator[tuple[_Owner, SumBlock]]:
             else:
                 yield _Owner(step.number), _of_step(step, "", step.operands, item, cells)
         for number, other in enumerate(step.alternatives, start=1):
-            where = f", if {' and '.join(use.outcome for use in other.regimes)}"
+            where = f", if {regime_words(other.regimes)}"
             for item in other.integrals:
                 owner = _Owner(step.number, number)
                 yield owner, _of_step(step, where, other.operands, item, cells)
