@@ -270,8 +270,7 @@ CHAPTER = Chapter(
         Regime(
             "valve_choking",
             "Choking of the valve: pressure drop ratio against that of choked flow",
-            x.at_least(x_ch),
-            CHOKED,
+            ((x.at_least(x_ch), CHOKED),),
             NOT_CHOKED,
             VALVES,
             iec_60534(),
