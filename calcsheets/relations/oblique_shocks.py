@@ -52,8 +52,8 @@ def _tan(angle: Expr) -> Expr:
 def _deflection(at: Expr) -> Expr:
     """Tangent of the deflection at a shock angle."""
     return (
-        2 * (_cos(at) / _sin(at)) * (M_1**2 * _sin(at) ** 2 - 1)
-        / (M_1**2 * (gamma + _cos(2 * at)) + 2)
+        2 * _cos(at) * (M_1**2 * _sin(at) ** 2 - 1)
+        / (_sin(at) * (M_1**2 * (gamma + _cos(2 * at)) + 2))
     )  # fmt: skip
 
 
