@@ -35,7 +35,7 @@ p_2 = symbols("p")[0].of(OUTLET)
 _GAS = (PERFECT, CONSTANT_HEATS)
 _SUPERSONIC = Limit(M_1.above(1), "the free stream is supersonic", essential=True)
 _THIN = "small disturbances: the inclination is far below 1 rad, the flow is nowhere transonic"
-_SLENDER = "far above Mach 1 and slender: M₁ is large and the inclination far below 1 rad"
+_SLENDER = "from about Mach 5 on, and slender: the inclination is far below 1 rad"
 _FACING = Limit(
     delta.at_least(0), "the surface faces the stream; elsewhere C_pr is 0 here", essential=True
 )
@@ -151,7 +151,7 @@ CHAPTER = Chapter(
             HYPERSONIC_WEDGE,
             (*_GAS, _SLENDER, "plane flow"),
             (_SUPERSONIC, _ENTERS),
-            "It understates the pressure where M₁ is not far above 1.",
+            "Too low a pressure where M₁ times the inclination is below 1, too high above.",
         ),
         _surface(
             "hypersonic_expansion",
