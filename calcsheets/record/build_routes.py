@@ -110,5 +110,5 @@ class _Known:
                 value=midpoint(solution.value),
                 unit=quantity.unit,
                 double_error=errors[step.edge.target],
-                regimes=tuple(RegimeUse(str(v), outcome) for v, outcome in source.regimes),
+                regimes=tuple(RegimeUse(str(v), outcomes) for v, outcomes in source.regimes),
             )

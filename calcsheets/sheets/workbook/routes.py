@@ -6,7 +6,7 @@ from ...expressions import Equation
 from ...record import Record, RouteRecord, RouteStep
 from ..typesetting import plain_text, symbol_text, unit_text
 from .cells import FIRST_ROW, OTHER_ROUTES, STEP_VALUE, Cells, reference
-from .formula import formula
+from .formula import formula, is_one_of
 from .page import Column, Page, double_size
 
 _COLUMNS = (
@@ -82,6 +82,6 @@ def _write_step(page: Page, row: int, record: Record, step: RouteStep, cells: Ce
     text = formula(step.solved, cells.of(step.operands))
     for use in step.regimes:
         if use.key in cells.by_key:
-            text = f'IF({cells.by_key[use.key]}="{use.outcome}",{text},NA())'
+            text = f"IF({is_one_of(cells.by_key[use.key], use.outcomes)},{text},NA())"
     size = double_size(step.value, step.double_error)
     page.formula(row, STEP_VALUE, text, step.value, page.value_style(step.value), size)
