@@ -23,7 +23,7 @@ from ..quantities import Variable, catalogue
 from .balls import OutsideDomainError, working_precision
 from .consistency import is_consistent
 from .refusals import quantity_text
-from .run import Outcome, Run, StepOutcome, missing_in
+from .run import Effort, Outcome, Run, StepOutcome, missing_in
 
 _MOST_ASSUMED = 4
 _MOST_CHOICES = 4
@@ -74,22 +74,39 @@ def solve_problem(problem: Problem) -> Outcome:
     """
     with working_precision():
         stated = _stated_regimes(problem)
-        try:
-            result = _attempt(problem, stated, {})
-        except _Unreachable as unreachable:
-            return _by_assumption(problem, unreachable, stated)
-        settled = result.settled() if isinstance(result, _Fork) else result
-        if isinstance(settled, SeveralRoots):
-            raise settled
-        _require_agreement(settled, stated)
-        return settled
+        for effort in Effort:
+            try:
+                return _as_stated(problem, stated, effort)
+            except _Unreachable as unreachable:
+                left = unreachable
+            if effort is Effort.STEPS:
+                continue
+            try:
+                return _by_assumption(problem, left, stated, effort)
+            except _Unreachable:
+                continue
+        raise _not_enough(problem, left.regimes, left.missing)
+
+
+def _as_stated(problem: Problem, stated: Mapping[Variable, str], effort: Effort) -> Outcome:
+    """Solve with nothing taken for granted but the regimes that the brief states."""
+    result = _attempt(problem, stated, {}, effort, explain=True)
+    settled = result.settled() if isinstance(result, _Fork) else result
+    if isinstance(settled, SeveralRoots):
+        raise settled
+    _require_agreement(settled, stated)
+    return settled
 
 
 def _attempt(
-    problem: Problem, assumed: Mapping[Variable, str], choices: Mapping[str, int]
+    problem: Problem,
+    assumed: Mapping[Variable, str],
+    choices: Mapping[str, int],
+    effort: Effort,
+    explain: bool = False,
 ) -> Outcome | _Fork:
     """Solve with regimes and roots taken for granted; fork where a root is not decided."""
-    run = Run(problem, assumed, choices)
+    run = Run(problem, assumed, choices, effort, explain)
     try:
         reached = run.reach()
         missing = missing_in(problem, reached)
@@ -100,15 +117,19 @@ def _attempt(
         if len(choices) == _MOST_CHOICES or question.unknown in choices:
             raise
         taken = ({**choices, question.unknown: i} for i in range(len(question.roots)))
-        return _Fork(question, tuple(_option(problem, assumed, choice) for choice in taken))
+        options = (_option(problem, assumed, choice, effort) for choice in taken)
+        return _Fork(question, tuple(options))
 
 
 def _option(
-    problem: Problem, assumed: Mapping[Variable, str], choices: Mapping[str, int]
+    problem: Problem,
+    assumed: Mapping[Variable, str],
+    choices: Mapping[str, int],
+    effort: Effort,
 ) -> Outcome | _Fork | None:
     """What follows from one root; ``None`` if that is not consistent."""
     try:
-        result = _attempt(problem, assumed, choices)
+        result = _attempt(problem, assumed, choices, effort)
     except (SolvingError, OutsideDomainError, _Unreachable):
         return None
     if isinstance(result, _Fork):
@@ -118,7 +139,10 @@ def _option(
 
 
 def _by_assumption(
-    problem: Problem, unreachable: _Unreachable, stated: Mapping[Variable, str]
+    problem: Problem,
+    unreachable: _Unreachable,
+    stated: Mapping[Variable, str],
+    effort: Effort,
 ) -> Outcome:
     """Try each combination of the open regimes, and keep those whose tests agree."""
     regimes = unreachable.regimes
@@ -131,7 +155,7 @@ def _by_assumption(
     for combination in product(*choices) if tests else ():
         assumed = {**stated, **dict(zip(tests, combination, strict=True))}
         try:
-            result: Outcome | _Fork | SeveralRoots = _attempt(problem, assumed, {})
+            result: Outcome | _Fork | SeveralRoots = _attempt(problem, assumed, {}, effort)
         except _Unreachable:
             continue
         except (SolvingError, OutsideDomainError):
@@ -153,7 +177,7 @@ def _by_assumption(
         raise questions[0]
     if reachable:
         raise _ambiguous(problem, tests, distinct)
-    raise _not_enough(problem, regimes, unreachable.missing)
+    raise unreachable
 
 
 def _ambiguous(problem: Problem, tests: list[Variable], found: list[Outcome]) -> AmbiguousRegime:

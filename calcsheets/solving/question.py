@@ -38,6 +38,7 @@ class Question:
         limits: what a value must meet besides the limits of the relation: its regime test, and
             what the process asks of the place.
         choice: which of several roots that nothing tells apart is taken; ``None`` to ask.
+        explain: whether somebody will read why there is no value; that takes a search of its own.
     """
 
     relation: Relation
@@ -48,6 +49,7 @@ class Question:
     place: str
     limits: tuple[Limit, ...] = ()
     choice: int | None = None
+    explain: bool = True
 
 
 def bounds_of(question: Question) -> tuple[Fraction, Fraction]:

@@ -34,7 +34,7 @@ def no_root(question: Question) -> NoRoot:
         relation=question.relation.title,
         unknown=question.key,
         bounds=_bounds_text(question, low, high),
-        reached=_reached(question, reached, low, high),
+        reached=_reached(question, reached, low, high) if question.explain else "",
         asked="0" if on_both else _asked(question, asked),
         limits=tuple(_limits_missed(question)),
     )

