@@ -121,7 +121,7 @@ def parse_brief(text: str, file: str = "brief") -> Brief:
         legs=legs,
         given=tuple(given for values in stated for given in values.given),
         same_as=tuple(same for values in stated for same, _ in values.same_as),
-        wanted=_read_wanted(root.table("wanted"), form, places),
+        wanted=_read_wanted(root.table("wanted"), form, places, legs),
         assumptions=tuple(_read_assumption(table, form) for table in root.tables("assumption")),
         references=_read_references(root, form),
         cautions=tuple(_read_caution(table, form) for table in root.tables("caution")),
@@ -246,12 +246,7 @@ def _check_leg(table: Table, leg: Leg, stations: list[str], before: list[Leg]) -
         )
     if leg.through and not needed:
         table.refuse("through", f'the process "{leg.process}" passes no orifice', "Remove through")
-    regimes = [
-        outcome
-        for regime in load_library().regimes
-        if leg.process in regime.offered_by
-        for outcome in regime.outcomes
-    ]
+    regimes = load_library().outcomes(leg.process)
     if leg.regime and leg.regime not in regimes:
         choice = f"Choose {either(regimes)}" if regimes else "Remove regime"
         table.refuse(
@@ -333,11 +328,12 @@ def _check_variable(table: Table, key: str, text: str, places: tuple[str, ...]) 
 
 def _require_home(table: Table, key: str, variable: Variable) -> None:
     quantity = catalogue()[variable.symbol]
+    home = "process" if quantity.kind is Kind.STATE else "station or process"
     if quantity.home == "station" and variable.place in RESERVED_NAMES:
         table.refuse(
             key,
-            f"{quantity.title} is a quantity of a station or process, not of the {variable.place}",
-            f"Write {quantity.symbol}@ and the name of a station or process",
+            f"{quantity.title} is a quantity of a {home}, not of the {variable.place}",
+            f"Write {quantity.symbol}@ and the name of a {home}",
         )
     if quantity.home not in ("station", variable.place):
         table.refuse(
@@ -347,12 +343,16 @@ def _require_home(table: Table, key: str, variable: Variable) -> None:
         )
 
 
-def _read_wanted(table: Table, form: Form, places: tuple[str, ...]) -> tuple[Wanted, ...]:
+def _read_wanted(
+    table: Table, form: Form, places: tuple[str, ...], legs: tuple[Leg, ...]
+) -> tuple[Wanted, ...]:
     if not table.entries:
         table.refuse("", "nothing is wanted", 'Add results, such as "mdot@orifice" = {}')
     results: dict[Variable, Wanted] = {}
     for name in table.entries:
         result = _read_result(table, name, form, places)
+        if result.unit is None:
+            _require_regime(table, name, result.variable.place, legs)
         if result.variable in results:
             table.refuse(
                 name,
@@ -361,6 +361,21 @@ def _read_wanted(table: Table, form: Form, places: tuple[str, ...]) -> tuple[Wan
             )
         results[result.variable] = result
     return tuple(results.values())
+
+
+def _require_regime(table: Table, name: str, place: str, legs: tuple[Leg, ...]) -> None:
+    """Refuse the regime of a place that is in none."""
+    library = load_library()
+    with_regimes = [leg.name for leg in legs if library.outcomes(leg.process)]
+    if place in with_regimes:
+        return
+    process = next((leg.process for leg in legs if leg.name == place), "")
+    if process:
+        reason = f'the process "{process}" has no regimes'
+    else:
+        reason = f'"{place}" is no process, and only a process has a regime'
+    keys = [f"regime@{leg}" for leg in with_regimes]
+    table.refuse(name, reason, f"Write {either(keys)}" if keys else "Remove this result")
 
 
 def _read_result(root: Table, name: str, form: Form, places: tuple[str, ...]) -> Wanted:

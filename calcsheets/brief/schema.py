@@ -143,12 +143,7 @@ def _leg(form: Form) -> Schema:
     library = load_library()
     rules: list[Schema] = []
     for process in library.processes.values():
-        regimes = [
-            outcome
-            for regime in library.regimes
-            if process.name in regime.offered_by
-            for outcome in regime.outcomes
-        ]
+        regimes = library.outcomes(process.name)
         through: Schema = {"required": ["through"]}
         then: Schema = through if process.needs_through else {"not": through}
         # the reader takes a regime left empty as one that is not stated

@@ -96,6 +96,15 @@ class Library:
             {process.name: process for chapter in self.chapters for process in chapter.processes}
         )
 
+    def outcomes(self, process: str) -> tuple[str, ...]:
+        """Return every regime that a process may be in, none where nothing tests one."""
+        return tuple(
+            outcome
+            for regime in self.regimes
+            if process in regime.offered_by
+            for outcome in regime.outcomes
+        )
+
     @cached_property
     def digest(self) -> str:
         """SHA-256 over the names, equations and sources of relations, regime tests and courses."""
