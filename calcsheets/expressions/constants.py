@@ -10,6 +10,7 @@ from types import MappingProxyType
 
 from ..quantities import REFERENCE_STATES, Dimension
 from ..quantities.dimension import (
+    CONDUCTANCE,
     DENSITY,
     LENGTH,
     MOLAR_HEAT,
@@ -84,6 +85,14 @@ def _of_metering() -> Iterator[ConstantDefinition]:
     yield row(
         "l_mm", "one millimetre, the unit of lengths in the standard", Fraction(1, 1000),
         LENGTH, "l", "mm", "the standard of the relation", "common practice",
+    )  # fmt: skip
+    yield row(
+        "l_m", "one metre, the unit of lengths in the standard", Fraction(1),
+        LENGTH, "l", "m", "the standard of the relation", "common practice",
+    )  # fmt: skip
+    yield row(
+        "C_u", "one cubic metre per second and pascal, the unit of sonic conductance", Fraction(1),
+        CONDUCTANCE, "C", "u", "the standard of the relation", "common practice",
     )  # fmt: skip
     yield row(
         "T_20", "20 °C, the temperature at which dimensions are stated", Fraction("293.15"),

@@ -25,6 +25,7 @@ from . import (
     oblique_shocks,
     orifice_plates,
     orifices,
+    pneumatics,
     rayleigh,
     sections,
     shock_tubes,
@@ -158,6 +159,7 @@ def load_library() -> Library:
                 flow_nozzles,
                 critical_nozzles,
                 control_valves,
+                pneumatics,
             )
         )
     )

@@ -64,3 +64,9 @@ def iec_60534(section: str = "1", what: str = "gas and vapour") -> Source:
     edition = {"1": "2011", "4": ""}[section]
     known = {"1": "library", "4": "from memory"}[section]
     return Source(f"IEC 60534-2-{section}, Control valves, {what}", edition, "", known)
+
+
+def iso_6358(part: int) -> Source:
+    """ISO 6358, flow-rate characteristics of pneumatic components; its text was not open."""
+    edition = {1: "2013", 3: "2014"}[part]
+    return Source(f"ISO 6358-{part}, Pneumatic fluid power", edition, "", "from memory")

@@ -38,4 +38,11 @@ VALVE = "control valve"
 VALVE_REDUCED = "control valve between reducers"
 VALVES = (VALVE, VALVE_REDUCED)
 
-THROTTLES = (*METERS, *CRITICAL_NOZZLES, *VALVES)
+COMPONENT = "pneumatic component"
+COMPONENT_INDEXED = "pneumatic component with subsonic index"
+TUBE = "pneumatic tube"
+PNEUMATIC = (COMPONENT, COMPONENT_INDEXED, TUBE)
+SERIES = "pneumatic components in series"
+PARALLEL = "pneumatic components in parallel"
+
+THROTTLES = (*METERS, *CRITICAL_NOZZLES, *VALVES, *PNEUMATIC)

@@ -9,6 +9,7 @@ from . import (
     gas,
     metering,
     moving_waves,
+    pneumatics,
     sections,
     states,
     turning,
@@ -28,6 +29,7 @@ SUBJECTS: tuple[ModuleType, ...] = (
     sections,
     moving_waves,
     valves,
+    pneumatics,
 )
 
 __all__ = ["SUBJECTS"]
