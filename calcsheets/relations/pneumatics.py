@@ -204,8 +204,7 @@ CHAPTER = Chapter(
         Regime(
             "component_choking",
             "Choking of the component: pressure ratio against its critical one",
-            (p_2 / p_1).at_most(b),
-            CHOKED,
+            (((p_2 / p_1).at_most(b), CHOKED),),
             NOT_CHOKED,
             (COMPONENT, COMPONENT_INDEXED, TUBE),
             iso_6358(1),
@@ -213,8 +212,7 @@ CHAPTER = Chapter(
         Regime(
             "series_choking",
             "Which component of a series chokes first",
-            alpha.at_most(1),
-            FIRST_CHOKES,
+            ((alpha.at_most(1), FIRST_CHOKES),),
             SECOND_CHOKES,
             (SERIES,),
             derived("Choking of the first component against that of the second"),
